@@ -41,6 +41,15 @@ class Segment:
     ice_start: float = 0.0
     ice_end: float = 0.0
 
+    def slope_k_per_j(self, temperature_c: float) -> float:
+        """How fast temperature rises with enthalpy at a temperature of the segment; 0 on a plateau. [K kg/J]"""
+        capacity = self.capacity_j_per_kg_k
+        if self.shape == QUADRATIC:
+            capacity += self.bend * (temperature_c - self.start_c)
+        if self.shape == FREEZING:
+            capacity += self.bend / (temperature_c * temperature_c)
+        return 1.0 / capacity
+
 
 @dataclass(frozen=True)
 class EnthalpyCurve:

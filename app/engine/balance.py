@@ -1,0 +1,185 @@
+"""The heat balance of one network, and its solution leaf to root: the innermost loops of the engine.
+
+Compiled. All working values of a run stand in the rows of one array, ``rows``, one column a body; the names
+of the rows are below. A body's temperature is read from its enthalpy on the segment it is ``locked`` to for the
+step, which goes on smoothly past the segment's ends, so that every step is a smooth problem; ``steps`` cuts
+steps at the breaks.
+"""
+
+import numpy as np
+
+from app.compiled import compiled
+from app.engine.network import CELLS, FILM
+from app.physics import LINEAR, film_flow_w, segment_ice, segment_temperature
+
+STAGE = 0
+"""First of the six rows of stages: heat flows before a stage is solved, changes of enthalpy after. [W, J]"""
+
+ENERGY, NEW, AT, START_W, START_SLOPE, PUSHED, OWN, FROM_PARENT, DIAGONAL, INVERSE, LIFT, THIRD, FOURTH = range(
+    6, 19
+)
+"""Enthalpies [J], flows [W], temperature slopes [K/J], derivatives and pivots [1/s, s], continuation [J]."""
+
+TEMPERATURE, SLOPE, CONDUCTIVITY, CONDUCTIVITY_SLOPE = range(19, 23)
+"""What ``read_states`` writes. [°C, K/J, W/m·K, per J]"""
+
+ROWS = 23
+
+
+@compiled
+def read_states(bodies, segments, locked, rows, energy_row):
+    """Temperature, its slope with enthalpy, and conductivity of every body from a row of enthalpies."""
+    for i in range(bodies.shape[0]):
+        body = bodies[i]
+        segment = segments[locked[i]]
+        energy_j = rows[energy_row, i]
+        if segment["shape"] == LINEAR:
+            slope = 1.0 / segment["capacity_j_per_k"]
+            temperature_c = segment["start_c"] + (energy_j - segment["start_j"]) * slope
+        else:
+            temperature_c, slope = segment_temperature(
+                segment["shape"], segment["start_c"], segment["start_j"], segment["capacity_j_per_k"],
+                segment["bend"], energy_j,
+            )
+        rows[TEMPERATURE, i] = temperature_c
+        rows[SLOPE, i] = slope
+        change = body["conductivity_solid"] - body["conductivity_liquid"]
+        if change != 0.0:
+            ice, ice_per_j = ice_share(segment, energy_j, temperature_c, slope)
+            rows[CONDUCTIVITY, i] = body["conductivity_liquid"] + change * ice
+            rows[CONDUCTIVITY_SLOPE, i] = change * ice_per_j
+        else:
+            rows[CONDUCTIVITY, i] = body["conductivity_liquid"]
+            rows[CONDUCTIVITY_SLOPE, i] = 0.0
+
+
+@compiled
+def ice_share(segment, energy_j, temperature_c, per_j):
+    """Share of full freezing on a segment, and its change with enthalpy."""
+    return segment_ice(
+        segment["shape"], segment["start_c"], segment["end_c"], segment["start_j"], segment["end_j"],
+        segment["ice_start"], segment["ice_end"], energy_j, temperature_c, per_j,
+    )
+
+
+@compiled
+def link_flow_w(body, rows, i):
+    """Heat flow from the parent into body ``i``, and its change with the two temperatures. [W, W/K, W/K]"""
+    parent = body["parent"]
+    own_c = rows[TEMPERATURE, i]
+    parent_c = rows[TEMPERATURE, parent]
+    conductance = body["conductance_w_per_k"]
+    if body["link"] == FILM:
+        series = body["near_path_per_m"] / rows[CONDUCTIVITY, i]
+        if conductance == 0.0:
+            return film_flow_w(
+                own_c, parent_c, body["area_m2"], body["base"], body["gain"], body["is_sixth"],
+                body["reference_c"], body["per_k"], body["emissivity"], series,
+            )
+        conductance = 1.0 / (1.0 / conductance + series)
+    elif body["link"] == CELLS:
+        conductance = 1.0 / (
+            body["near_path_per_m"] / rows[CONDUCTIVITY, i]
+            + body["far_path_per_m"] / rows[CONDUCTIVITY, parent]
+        )
+    return conductance * (parent_c - own_c), -conductance, conductance
+
+
+@compiled
+def rates(bodies, boundaries, drive_c, rows, rate_row, path_w):
+    """Net heat flow into every body into a row, and heat from outside by path. [W]"""
+    n = bodies.shape[0]
+    for i in range(n):
+        rows[rate_row, i] = 0.0
+    for i in range(n - 1, 0, -1):
+        body = bodies[i]
+        flow = link_flow_w(body, rows, i)[0]
+        rows[rate_row, i] += flow
+        rows[rate_row, body["parent"]] -= flow
+    for p in range(path_w.shape[0]):
+        path_w[p] = 0.0
+    for b in range(boundaries.shape[0]):
+        boundary = boundaries[b]
+        i = boundary["body"]
+        flow = boundary["conductance_w_per_k"] * (drive_c[boundary["drive"]] - rows[TEMPERATURE, i])
+        rows[rate_row, i] += flow
+        path_w[boundary["path"]] += flow
+
+
+@compiled
+def linearise(bodies, boundaries, rows):
+    """Derivatives of the heat balance by enthalpy into OWN, FROM_PARENT and DIAGONAL. [1/s]
+
+    OWN is d(flow from the parent) / d(own enthalpy), FROM_PARENT the same by the parent's enthalpy.
+    """
+    n = bodies.shape[0]
+    for i in range(n):
+        rows[DIAGONAL, i] = 0.0
+    for i in range(n - 1, 0, -1):
+        body = bodies[i]
+        parent = body["parent"]
+        flow, by_own, by_parent = link_flow_w(body, rows, i)
+        own = by_own * rows[SLOPE, i]
+        from_parent = by_parent * rows[SLOPE, parent]
+        difference = rows[TEMPERATURE, parent] - rows[TEMPERATURE, i]
+        if difference != 0.0:
+            # conductivity changes as ice melts: d flow / d resistance = -flow² / difference
+            square = flow * flow / difference
+            near, far = rows[CONDUCTIVITY, i], rows[CONDUCTIVITY, parent]
+            own += square * body["near_path_per_m"] / (near * near) * rows[CONDUCTIVITY_SLOPE, i]
+            from_parent += square * body["far_path_per_m"] / (far * far) * rows[CONDUCTIVITY_SLOPE, parent]
+        rows[OWN, i] = own
+        rows[FROM_PARENT, i] = from_parent
+        rows[DIAGONAL, i] += own
+        rows[DIAGONAL, parent] -= from_parent
+    for b in range(boundaries.shape[0]):
+        i = boundaries[b]["body"]
+        rows[DIAGONAL, i] -= boundaries[b]["conductance_w_per_k"] * rows[SLOPE, i]
+
+
+@compiled
+def eliminate(bodies, rows, shift_per_s):
+    """Factor ``W = shift I - J`` from the leaves to the root: INVERSE pivots and LIFT per body."""
+    n = bodies.shape[0]
+    for i in range(n):
+        rows[INVERSE, i] = shift_per_s - rows[DIAGONAL, i]
+    for i in range(n - 1, 0, -1):
+        inverse = 1.0 / rows[INVERSE, i]
+        lift = rows[OWN, i] * inverse
+        rows[INVERSE, i] = inverse
+        rows[LIFT, i] = lift
+        rows[INVERSE, bodies[i]["parent"]] += lift * rows[FROM_PARENT, i]
+    rows[INVERSE, 0] = 1.0 / rows[INVERSE, 0]
+
+
+@compiled
+def solve(bodies, rows, right_row):
+    """Solve ``W k = right`` in place of a row, leaf to root and back."""
+    n = bodies.shape[0]
+    for i in range(n - 1, 0, -1):
+        rows[right_row, bodies[i]["parent"]] -= rows[LIFT, i] * rows[right_row, i]
+    rows[right_row, 0] *= rows[INVERSE, 0]
+    for i in range(1, n):
+        above = rows[FROM_PARENT, i] * rows[right_row, bodies[i]["parent"]]
+        rows[right_row, i] = (rows[right_row, i] + above) * rows[INVERSE, i]
+
+
+@compiled
+def drive_temperatures(pieces, piece_starts, current, time_s, drive_c, drive_k_per_s):
+    """Temperature of each of the surroundings on its current piece, and its rate. [°C, K/s]"""
+    for d in range(drive_c.shape[0]):
+        piece = pieces[piece_starts[d] + current[d]]
+        since = time_s - piece["start_s"]
+        value = piece["level_c"] + piece["slope_k_per_s"] * since
+        rate = piece["slope_k_per_s"]
+        if piece["decay_k"] != 0.0:
+            decay = piece["decay_k"] * np.exp(-piece["decay_per_s"] * since)
+            value += decay
+            rate -= piece["decay_per_s"] * decay
+        turn = piece["turn_per_s"]
+        if turn != 0.0:
+            cosine, sine = np.cos(turn * since), np.sin(turn * since)
+            value += piece["cosine_k"] * cosine + piece["sine_k"] * sine
+            rate += turn * (piece["sine_k"] * cosine - piece["cosine_k"] * sine)
+        drive_c[d] = value
+        drive_k_per_s[d] = rate
