@@ -8,9 +8,11 @@ steps at the breaks.
 
 import numpy as np
 
-from app.compiled import compiled
-from app.engine.network import CELLS, FILM
-from app.physics import LINEAR, film_flow_w, segment_ice, segment_temperature
+from app.compiled import compiled, compiled_inline
+from app.engine.network import FILM, SERIES
+from app.physics import (
+    LINEAR, film_flow_w, segment_ice, segment_ice_slope, segment_slope, segment_temperature,
+)
 
 STAGE = 0
 """First of the six rows of stages: heat flows before a stage is solved, changes of enthalpy after. [W, J]"""
@@ -20,69 +22,93 @@ ENERGY, NEW, AT, START_W, START_SLOPE, PUSHED, OWN, FROM_PARENT, DIAGONAL, INVER
 )
 """Enthalpies [J], flows [W], temperature slopes [K/J], derivatives and pivots [1/s, s], continuation [J]."""
 
-TEMPERATURE, SLOPE, CONDUCTIVITY, CONDUCTIVITY_SLOPE = range(19, 23)
-"""What ``read_states`` writes. [°C, K/J, W/m·K, per J]"""
+TEMPERATURE, RESISTIVITY, SLOPE, RESISTIVITY_SLOPE = range(19, 23)
+"""What ``read_states`` and ``read_slopes`` write. [°C, m·K/W, K/J, m·K/W per J]"""
 
 ROWS = 23
 
 
 @compiled
 def read_states(bodies, segments, locked, rows, energy_row):
-    """Temperature, its slope with enthalpy, and conductivity of every body from a row of enthalpies."""
+    """Temperature and thermal resistivity of every body from a row of enthalpies."""
     for i in range(bodies.shape[0]):
         body = bodies[i]
         segment = segments[locked[i]]
         energy_j = rows[energy_row, i]
         if segment["shape"] == LINEAR:
-            slope = 1.0 / segment["capacity_j_per_k"]
-            temperature_c = segment["start_c"] + (energy_j - segment["start_j"]) * slope
+            temperature_c = segment["start_c"] + (energy_j - segment["start_j"]) * segment["k_per_j"]
         else:
-            temperature_c, slope = segment_temperature(
+            temperature_c = segment_temperature(
                 segment["shape"], segment["start_c"], segment["start_j"], segment["capacity_j_per_k"],
                 segment["bend"], energy_j,
             )
         rows[TEMPERATURE, i] = temperature_c
-        rows[SLOPE, i] = slope
         change = body["conductivity_solid"] - body["conductivity_liquid"]
         if change != 0.0:
-            ice, ice_per_j = ice_share(segment, energy_j, temperature_c, slope)
-            rows[CONDUCTIVITY, i] = body["conductivity_liquid"] + change * ice
-            rows[CONDUCTIVITY_SLOPE, i] = change * ice_per_j
+            ice = ice_share(segment, energy_j, temperature_c)
+            rows[RESISTIVITY, i] = 1.0 / (body["conductivity_liquid"] + change * ice)
         else:
-            rows[CONDUCTIVITY, i] = body["conductivity_liquid"]
-            rows[CONDUCTIVITY_SLOPE, i] = 0.0
+            rows[RESISTIVITY, i] = body["resistivity"]
 
 
 @compiled
-def ice_share(segment, energy_j, temperature_c, per_j):
-    """Share of full freezing on a segment, and its change with enthalpy."""
+def read_slopes(bodies, segments, locked, rows, energy_row):
+    """Slopes with enthalpy of what ``read_states`` has just written for the same row."""
+    for i in range(bodies.shape[0]):
+        body = bodies[i]
+        segment = segments[locked[i]]
+        temperature_c = rows[TEMPERATURE, i]
+        slope = segment_slope(
+            segment["shape"], segment["start_c"], segment["capacity_j_per_k"], segment["bend"], temperature_c
+        )
+        rows[SLOPE, i] = slope
+        change = body["conductivity_solid"] - body["conductivity_liquid"]
+        by_ice = segment_ice_slope(
+            segment["shape"], segment["start_c"], segment["end_c"], segment["start_j"], segment["end_j"],
+            segment["ice_start"], segment["ice_end"], rows[energy_row, i], temperature_c, slope,
+        )
+        rows[RESISTIVITY_SLOPE, i] = -rows[RESISTIVITY, i] * rows[RESISTIVITY, i] * change * by_ice
+
+
+@compiled
+def ice_share(segment, energy_j, temperature_c):
+    """Share of full freezing on a segment."""
     return segment_ice(
         segment["shape"], segment["start_c"], segment["end_c"], segment["start_j"], segment["end_j"],
-        segment["ice_start"], segment["ice_end"], energy_j, temperature_c, per_j,
+        segment["ice_start"], segment["ice_end"], energy_j, temperature_c,
+    )
+
+
+@compiled_inline
+def plain_conductance_w_per_k(body, rows, i):
+    """Conductance of a link without a film of its own: given, or a resistance and two paths in series."""
+    conductance = body["conductance_w_per_k"]
+    if body["link"] == SERIES:
+        conductance = 1.0 / (
+            body["resistance_k_per_w"]
+            + body["near_path_per_m"] * rows[RESISTIVITY, i]
+            + body["far_path_per_m"] * rows[RESISTIVITY, body["parent"]]
+        )
+    return conductance
+
+
+@compiled
+def film_link_flow_w(body, rows, i):
+    """Heat flow from the air into a surface, and its change with the two temperatures. [W, W/K, W/K]"""
+    return film_flow_w(
+        rows[TEMPERATURE, i], rows[TEMPERATURE, body["parent"]], body["area_m2"], body["base"], body["gain"],
+        body["is_sixth"], body["reference_c"], body["per_k"], body["emissivity"],
+        body["near_path_per_m"] * rows[RESISTIVITY, i],
     )
 
 
 @compiled
 def link_flow_w(body, rows, i):
-    """Heat flow from the parent into body ``i``, and its change with the two temperatures. [W, W/K, W/K]"""
-    parent = body["parent"]
-    own_c = rows[TEMPERATURE, i]
-    parent_c = rows[TEMPERATURE, parent]
-    conductance = body["conductance_w_per_k"]
+    """Heat flow from the parent into body ``i``. [W]"""
     if body["link"] == FILM:
-        series = body["near_path_per_m"] / rows[CONDUCTIVITY, i]
-        if conductance == 0.0:
-            return film_flow_w(
-                own_c, parent_c, body["area_m2"], body["base"], body["gain"], body["is_sixth"],
-                body["reference_c"], body["per_k"], body["emissivity"], series,
-            )
-        conductance = 1.0 / (1.0 / conductance + series)
-    elif body["link"] == CELLS:
-        conductance = 1.0 / (
-            body["near_path_per_m"] / rows[CONDUCTIVITY, i]
-            + body["far_path_per_m"] / rows[CONDUCTIVITY, parent]
-        )
-    return conductance * (parent_c - own_c), -conductance, conductance
+        return film_link_flow_w(body, rows, i)[0]
+    difference = rows[TEMPERATURE, body["parent"]] - rows[TEMPERATURE, i]
+    return plain_conductance_w_per_k(body, rows, i) * difference
 
 
 @compiled
@@ -93,9 +119,14 @@ def rates(bodies, boundaries, drive_c, rows, rate_row, path_w):
         rows[rate_row, i] = 0.0
     for i in range(n - 1, 0, -1):
         body = bodies[i]
-        flow = link_flow_w(body, rows, i)[0]
+        parent = body["parent"]
+        if body["link"] == FILM:
+            flow = film_link_flow_w(body, rows, i)[0]
+        else:
+            difference = rows[TEMPERATURE, parent] - rows[TEMPERATURE, i]
+            flow = plain_conductance_w_per_k(body, rows, i) * difference
         rows[rate_row, i] += flow
-        rows[rate_row, body["parent"]] -= flow
+        rows[rate_row, parent] -= flow
     for p in range(path_w.shape[0]):
         path_w[p] = 0.0
     for b in range(boundaries.shape[0]):
@@ -118,16 +149,20 @@ def linearise(bodies, boundaries, rows):
     for i in range(n - 1, 0, -1):
         body = bodies[i]
         parent = body["parent"]
-        flow, by_own, by_parent = link_flow_w(body, rows, i)
+        difference = rows[TEMPERATURE, parent] - rows[TEMPERATURE, i]
+        if body["link"] == FILM:
+            flow, by_own, by_parent = film_link_flow_w(body, rows, i)
+        else:
+            by_parent = plain_conductance_w_per_k(body, rows, i)
+            by_own = -by_parent
+            flow = by_parent * difference
         own = by_own * rows[SLOPE, i]
         from_parent = by_parent * rows[SLOPE, parent]
-        difference = rows[TEMPERATURE, parent] - rows[TEMPERATURE, i]
         if difference != 0.0:
-            # conductivity changes as ice melts: d flow / d resistance = -flow² / difference
+            # resistivity changes as ice melts: d flow / d resistance = -flow² / difference
             square = flow * flow / difference
-            near, far = rows[CONDUCTIVITY, i], rows[CONDUCTIVITY, parent]
-            own += square * body["near_path_per_m"] / (near * near) * rows[CONDUCTIVITY_SLOPE, i]
-            from_parent += square * body["far_path_per_m"] / (far * far) * rows[CONDUCTIVITY_SLOPE, parent]
+            own -= square * body["near_path_per_m"] * rows[RESISTIVITY_SLOPE, i]
+            from_parent -= square * body["far_path_per_m"] * rows[RESISTIVITY_SLOPE, parent]
         rows[OWN, i] = own
         rows[FROM_PARENT, i] = from_parent
         rows[DIAGONAL, i] += own

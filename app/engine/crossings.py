@@ -24,6 +24,9 @@ _TO_POWERS = np.linalg.inv(np.vander(_NODES, 5, increasing=True))
 _LOOKS = 16
 """Pieces of a step in which a sign change is looked for."""
 
+_ROUNDING = 1e-9
+"""Ice that stands at 0 °C is not above 0 °C: a level must be passed by more than rounding."""
+
 
 @dataclass(frozen=True)
 class Passed:
@@ -128,6 +131,7 @@ def _passed(
     times: Floats, values: Floats, value_at: Callable[[float], float], level: float, longer_than_s: float
 ) -> Passed:
     """First rise above a level, and the end of the first stretch above it that lasts too long."""
+    level += _ROUNDING
     above = values > level
     since_s = 0.0 if above[0] else None
     first_s = since_s

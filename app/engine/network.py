@@ -18,8 +18,8 @@ from numpy.typing import NDArray
 from app.engine.histories import History, pieces_of
 from app.physics import EnthalpyCurve, FilmLaw
 
-FIXED, FILM, CELLS = 0, 1, 2
-"""Links to the parent: fixed conductance; still air over a surface; two cells that may melt."""
+FIXED, SERIES, FILM = 0, 1, 2
+"""Links to the parent: a conductance; a resistance with paths through bodies that may melt; still air."""
 
 BODY_TEMPERATURE, SURFACE, WARMEST, COLDEST, MEAN, MELTED, SOLID_LEFT = 0, 1, 2, 3, 4, 5, 6
 """Quantities that a watch traces. Temperatures in °C; MELTED and SOLID_LEFT as shares of full freezing."""
@@ -27,10 +27,10 @@ BODY_TEMPERATURE, SURFACE, WARMEST, COLDEST, MEAN, MELTED, SOLID_LEFT = 0, 1, 2,
 BODY = np.dtype(
     [
         ("parent", np.int64), ("link", np.int64), ("conductance_w_per_k", np.float64),
-        ("near_path_per_m", np.float64), ("far_path_per_m", np.float64),
+        ("resistance_k_per_w", np.float64), ("near_path_per_m", np.float64), ("far_path_per_m", np.float64),
         ("area_m2", np.float64), ("base", np.float64), ("gain", np.float64), ("is_sixth", np.float64),
         ("reference_c", np.float64), ("per_k", np.float64), ("emissivity", np.float64),
-        ("conductivity_liquid", np.float64), ("conductivity_solid", np.float64),
+        ("conductivity_liquid", np.float64), ("conductivity_solid", np.float64), ("resistivity", np.float64),
         ("first_segment", np.int64), ("segments", np.int64), ("start_segment", np.int64),
         ("start_j", np.float64), ("least_k_per_j", np.float64), ("tolerance_k", np.float64),
         ("mass_kg", np.float64),
@@ -39,7 +39,7 @@ BODY = np.dtype(
 SEGMENT = np.dtype(
     [
         ("shape", np.int64), ("start_c", np.float64), ("end_c", np.float64), ("start_j", np.float64),
-        ("end_j", np.float64), ("capacity_j_per_k", np.float64), ("bend", np.float64),
+        ("end_j", np.float64), ("capacity_j_per_k", np.float64), ("k_per_j", np.float64), ("bend", np.float64),
         ("ice_start", np.float64), ("ice_end", np.float64), ("end_tolerance_j", np.float64),
     ]
 )
@@ -203,7 +203,8 @@ class _Tables:
                 (
                     segment.shape, segment.start_c, segment.end_c, segment.start_j_per_kg * mass_kg,
                     math.inf if last else segment.end_j_per_kg * mass_kg,
-                    segment.capacity_j_per_kg_k * mass_kg, segment.bend * mass_kg,
+                    segment.capacity_j_per_kg_k * mass_kg, 1.0 / (segment.capacity_j_per_kg_k * mass_kg),
+                    segment.bend * mass_kg,
                     segment.ice_start / full, segment.ice_end / full,
                     math.inf if last else _tolerance_j_per_kg(curve, index) * mass_kg,
                 )
@@ -221,6 +222,7 @@ class _Tables:
         return (
             body.parent, *_link_columns(body.link),
             body.curve.conductivity_liquid_w_per_m_k, body.curve.conductivity_solid_w_per_m_k,
+            1.0 / body.curve.conductivity_liquid_w_per_m_k,
             first, count, body.curve.segment_at(start), start * body.mass_kg,
             # what error is worth on a plateau, where enthalpy moves no temperature
             0.2 / (capacity * body.mass_kg), body.tolerance_k, body.mass_kg,
@@ -240,21 +242,18 @@ class _Tables:
 def _link_columns(link: Link | None) -> tuple[float, ...]:
     """The columns of BODY from ``link`` to ``emissivity``."""
     nothing = (0.0, 0.0, 0.0, 1.0, 0.0, 0.0, 0.0)
-    if isinstance(link, FixedLink):
-        return FIXED, link.conductance_w_per_k, 0.0, 0.0, *nothing
     if isinstance(link, CellLink):
-        return CELLS, 0.0, link.near_path_per_m, link.far_path_per_m, *nothing
+        return SERIES, 0.0, 0.0, link.near_path_per_m, link.far_path_per_m, *nothing
     if isinstance(link, SteadyFilmLink):
-        # a film that does not change is conduction over a path through something of conductivity 1
         resistance = 1.0 / (link.film_w_per_m2_k * link.area_m2)
-        return FILM, 1.0 / resistance, link.near_path_per_m, 0.0, *nothing
+        return SERIES, 0.0, resistance, link.near_path_per_m, 0.0, *nothing
     if isinstance(link, FilmLink):
         law = link.law
         return (
-            FILM, 0.0, link.near_path_per_m, 0.0, link.area_m2, law.base, law.gain,
+            FILM, 0.0, 0.0, link.near_path_per_m, 0.0, link.area_m2, law.base, law.gain,
             float(math.isclose(law.exponent, 1.0 / 6.0)), law.reference_c, law.per_k, link.emissivity,
         )
-    return FIXED, 0.0, 0.0, 0.0, *nothing
+    return FIXED, link.conductance_w_per_k if link is not None else 0.0, 0.0, 0.0, 0.0, *nothing
 
 
 def _tolerance_j_per_kg(curve: EnthalpyCurve, index: int) -> float:

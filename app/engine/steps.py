@@ -10,7 +10,7 @@ import numpy as np
 from app.compiled import compiled
 from app.engine.balance import (
     AT, ENERGY, FOURTH, NEW, PUSHED, ROWS, SLOPE, STAGE, START_SLOPE, START_W, THIRD, drive_temperatures, eliminate,
-    linearise, rates, read_states, solve,
+    linearise, rates, read_slopes, read_states, solve,
 )
 from app.engine.rosenbrock import ALPHA, GAMMA, PUSH, STAGES, A, C
 from app.engine.rosenbrock import FOURTH as FOURTH_WEIGHTS
@@ -124,6 +124,7 @@ def _begin_step(
     """Read the balance and its derivatives at the start of a step, on the segments and pieces then valid."""
     drive_temperatures(pieces, piece_starts, piece, time, drives[0], drives[1])
     read_states(bodies, segments, locked, rows, ENERGY)
+    read_slopes(bodies, segments, locked, rows, ENERGY)
     rates(bodies, boundaries, drives[0], rows, START_W, path_w[0])
     linearise(bodies, boundaries, rows)
     for i in range(bodies.shape[0]):

@@ -1,7 +1,7 @@
 """What is traced during a run: temperatures of bodies, the points of an item, and what has melted. Compiled."""
 
 from app.compiled import compiled
-from app.engine.balance import CONDUCTIVITY, SLOPE, TEMPERATURE, ice_share, link_flow_w, read_states
+from app.engine.balance import RESISTIVITY, TEMPERATURE, ice_share, link_flow_w, read_states
 from app.engine.network import BODY_TEMPERATURE, COLDEST, MEAN, MELTED, SOLID_LEFT, SURFACE, WARMEST
 from app.physics import segment_temperature
 
@@ -43,7 +43,7 @@ def _mean_c(segments, watch, rows, energy_row):
     return segment_temperature(
         segment["shape"], segment["start_c"], segment["start_j"], segment["capacity_j_per_k"], segment["bend"],
         total_j,
-    )[0]
+    )
 
 
 @compiled
@@ -52,7 +52,7 @@ def _solid_share(bodies, segments, watch, locked, rows, energy_row):
     solid_kg = 0.0
     mass_kg = 0.0
     for i in range(watch["first_body"], watch["last_body"] + 1):
-        share = ice_share(segments[locked[i]], rows[energy_row, i], rows[TEMPERATURE, i], rows[SLOPE, i])[0]
+        share = ice_share(segments[locked[i]], rows[energy_row, i], rows[TEMPERATURE, i])
         solid_kg += share * bodies[i]["mass_kg"]
         mass_kg += bodies[i]["mass_kg"]
     return solid_kg / mass_kg
@@ -62,8 +62,8 @@ def _solid_share(bodies, segments, watch, locked, rows, energy_row):
 def _extreme_c(bodies, watch, rows):
     """Temperature of the item's surface, or the warmest or coldest of its surface and its bodies. [°C]"""
     first = watch["first_body"]
-    flow_w = link_flow_w(bodies[first], rows, first)[0]
-    found = rows[TEMPERATURE, first] + flow_w * bodies[first]["near_path_per_m"] / rows[CONDUCTIVITY, first]
+    flow_w = link_flow_w(bodies[first], rows, first)
+    found = rows[TEMPERATURE, first] + flow_w * bodies[first]["near_path_per_m"] * rows[RESISTIVITY, first]
     if watch["quantity"] == SURFACE:
         return found
     for i in range(first, watch["last_body"] + 1):

@@ -43,12 +43,9 @@ class Segment:
 
     def slope_k_per_j(self, temperature_c: float) -> float:
         """How fast temperature rises with enthalpy at a temperature of the segment; 0 on a plateau. [K kg/J]"""
-        capacity = self.capacity_j_per_kg_k
-        if self.shape == QUADRATIC:
-            capacity += self.bend * (temperature_c - self.start_c)
-        if self.shape == FREEZING:
-            capacity += self.bend / (temperature_c * temperature_c)
-        return 1.0 / capacity
+        return segment_slope(
+            self.shape, self.start_c, self.capacity_j_per_kg_k, self.bend, temperature_c
+        )
 
 
 @dataclass(frozen=True)
@@ -94,19 +91,15 @@ class EnthalpyCurve:
         return segment_temperature(
             segment.shape, segment.start_c, segment.start_j_per_kg, segment.capacity_j_per_kg_k,
             segment.bend, enthalpy_j_per_kg,
-        )[0]
+        )
 
     def ice_kg_per_kg(self, enthalpy_j_per_kg: float) -> float:
         """Ice, or unmelted solid, at an enthalpy. [kg/kg]"""
         segment = self.segments[self.segment_at(enthalpy_j_per_kg)]
-        temperature_c, per_j = segment_temperature(
-            segment.shape, segment.start_c, segment.start_j_per_kg, segment.capacity_j_per_kg_k,
-            segment.bend, enthalpy_j_per_kg,
-        )
         return segment_ice(
             segment.shape, segment.start_c, segment.end_c, segment.start_j_per_kg, segment.end_j_per_kg,
-            segment.ice_start, segment.ice_end, enthalpy_j_per_kg, temperature_c, per_j,
-        )[0]
+            segment.ice_start, segment.ice_end, enthalpy_j_per_kg, self.temperature_c(enthalpy_j_per_kg),
+        )
 
     def with_capacity(self, extra_j_per_kg_k: float) -> EnthalpyCurve:
         """The curve with something beside it that only warms, such as packaging, per kilogram of contents.
@@ -146,46 +139,70 @@ def segment_enthalpy(
 @compiled
 def segment_temperature(
     shape: int, start_c: float, start_j: float, capacity: float, bend: float, enthalpy_j: float
-) -> tuple[float, float]:
-    """Temperature at an enthalpy on one segment, and how fast it rises with enthalpy. [°C, K/J]
+) -> float:
+    """Temperature at an enthalpy on one segment. [°C]
 
     Goes on smoothly beyond the segment's ends, so that a step may look past them.
     """
     gained = enthalpy_j - start_j
     if shape == QUADRATIC:
-        # c r + b r²/2 = gained, solved so that b = 0 is no special case; far below, where the parabola
-        # turns, the capacity is held at half of c.
-        inside = capacity * capacity + 2.0 * bend * gained
-        root = math.sqrt(max(inside, 0.25 * capacity * capacity))
-        return start_c + 2.0 * gained / (capacity + root), 1.0 / root
+        # c r + b r²/2 = gained, solved so that b = 0 is no special case
+        return start_c + 2.0 * gained / (capacity + _quadratic_root(capacity, bend, gained))
     if shape == FREEZING:
         # c t² - (gained + c t0 - b/t0) t - b = 0, the root below 0 °C
         middle = gained + capacity * start_c - bend / start_c
         root = math.sqrt(middle * middle + 4.0 * capacity * bend)
         if middle > 0.0:
-            temperature_c = -2.0 * bend / (middle + root)
-        else:
-            temperature_c = (middle - root) / (2.0 * capacity)
-        return temperature_c, 1.0 / (capacity + bend / (temperature_c * temperature_c))
-    return start_c + gained / capacity, 1.0 / capacity
+            return -2.0 * bend / (middle + root)
+        return (middle - root) / (2.0 * capacity)
+    return start_c + gained / capacity
+
+
+@compiled
+def segment_slope(
+    shape: int, start_c: float, capacity: float, bend: float, temperature_c: float
+) -> float:
+    """How fast temperature rises with enthalpy on one segment, at a temperature; 0 on a plateau. [K/J]"""
+    if shape == QUADRATIC:
+        return 1.0 / max(capacity + bend * (temperature_c - start_c), 0.5 * capacity)
+    if shape == FREEZING:
+        return 1.0 / (capacity + bend / (temperature_c * temperature_c))
+    return 1.0 / capacity
+
+
+@compiled
+def _quadratic_root(capacity: float, bend: float, gained: float) -> float:
+    """Capacity at the end of a rise; far off the segment, where the parabola turns, half of that at its start."""
+    return math.sqrt(max(capacity * capacity + 2.0 * bend * gained, 0.25 * capacity * capacity))
 
 
 @compiled
 def segment_ice(
     shape: int, start_c: float, end_c: float, start_j: float, end_j: float, ice_start: float, ice_end: float,
-    enthalpy_j: float, temperature_c: float, k_per_j: float,
-) -> tuple[float, float]:
-    """Ice at an enthalpy on one segment, held between its ends, and its change with enthalpy. [kg/kg, per J]"""
-    if ice_start == ice_end:
-        return ice_start, 0.0
-    if enthalpy_j <= start_j:
-        return ice_start, 0.0
+    enthalpy_j: float, temperature_c: float,
+) -> float:
+    """Ice at an enthalpy on one segment, held between its ends. [kg/kg]"""
+    if ice_start == ice_end or enthalpy_j <= start_j:
+        return ice_start
     if enthalpy_j >= end_j:
-        return ice_end, 0.0
+        return ice_end
     if shape == FREEZING:
-        # ice = m (1 - tf/t) runs from ice_start to ice_end; m and tf m from the two ends
-        by_inverse = (ice_start - ice_end) / (1.0 / start_c - 1.0 / end_c)
-        ice = ice_start + by_inverse * (1.0 / temperature_c - 1.0 / start_c)
-        return ice, -by_inverse / (temperature_c * temperature_c) * k_per_j
-    per_j = (ice_end - ice_start) / (end_j - start_j)
-    return ice_start + per_j * (enthalpy_j - start_j), per_j
+        # ice = m (1 - tf/t) is straight in 1/t
+        share = (1.0 / temperature_c - 1.0 / start_c) / (1.0 / end_c - 1.0 / start_c)
+    else:
+        share = (enthalpy_j - start_j) / (end_j - start_j)
+    return ice_start + (ice_end - ice_start) * share
+
+
+@compiled
+def segment_ice_slope(
+    shape: int, start_c: float, end_c: float, start_j: float, end_j: float, ice_start: float, ice_end: float,
+    enthalpy_j: float, temperature_c: float, k_per_j: float,
+) -> float:
+    """Change of ice with enthalpy on one segment; 0 beyond its ends. [kg/kg per J]"""
+    if ice_start == ice_end or enthalpy_j <= start_j or enthalpy_j >= end_j:
+        return 0.0
+    if shape == FREEZING:
+        by_inverse = (ice_end - ice_start) / (1.0 / end_c - 1.0 / start_c)
+        return -by_inverse / (temperature_c * temperature_c) * k_per_j
+    return (ice_end - ice_start) / (end_j - start_j)

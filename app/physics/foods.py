@@ -1,0 +1,516 @@
+"""Foods from their composition: specific heat, density, conductivity, ice, and the enthalpy curve.
+
+Food does not melt at one temperature: its water freezes out over a range, and the curve says how. Called by
+``stores.loads``, which looks compositions up.
+"""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass
+
+from app.errors import InputOutOfRange
+from app.physics.enthalpy import FREEZING, LINEAR, QUADRATIC, EnthalpyCurve, Segment, segment_enthalpy
+
+LATENT_HEAT_OF_WATER_J_PER_KG = 333.6e3
+"""At 0 °C, as all the correlations of this module use it (ASHRAE Refrigeration 2006, ch. 9)."""
+
+COLDEST_OF_CURVE_C = -40.0
+"""Below this the correlation for the freezing range ends; solids and ice carry on."""
+
+_FROZEN_CONDUCTIVITY_AT_C = -25.0
+_BELOW_CURVE_C = -95.0
+_ABOVE_FREEZING_K = 100.0
+
+# value at 0 °C, per °C, per °C²: Choi and Okos (1986), ASHRAE Refrigeration 2006, ch. 9, Tables 1 and 2
+_DENSITY = {
+    "protein": (1329.9, -0.51840, 0.0), "fat": (925.59, -0.41757, 0.0), "carbohydrate": (1599.1, -0.31046, 0.0),
+    "fibre": (1311.5, -0.36589, 0.0), "ash": (2423.8, -0.28063, 0.0), "water": (997.18, 3.1439e-3, -3.7574e-3),
+    "ice": (916.89, -0.13071, 0.0),
+}
+# Two constants circulate for liquid water, 4176.2 and 4128.9: only 4176.2 gives the handbook's own products.
+# Its polynomial for below 0 °C is left out: unfrozen water in food is covered by the freezing range.
+_SPECIFIC_HEAT = {
+    "protein": (2008.2, 1.2089, -1.3129e-3), "fat": (1984.2, 1.4733, -4.8008e-3),
+    "carbohydrate": (1548.8, 1.9625, -5.9399e-3), "fibre": (1845.9, 1.8306, -4.6509e-3),
+    "ash": (1092.6, 1.8896, -3.6817e-3), "water": (4176.2, -9.0864e-2, 5.4731e-3), "ice": (2062.3, 6.0769, 0.0),
+}
+_CONDUCTIVITY = {
+    "protein": (0.17881, 1.1958e-3, -2.7178e-6), "fat": (0.18071, -2.7604e-4, -1.7749e-7),
+    "carbohydrate": (0.20141, 1.3874e-3, -4.3312e-6), "fibre": (0.18331, 1.2497e-3, -3.1683e-6),
+    "ash": (0.32962, 1.4011e-3, -2.9069e-6), "water": (0.57109, 1.7625e-3, -6.7036e-6),
+    "ice": (2.2196, -6.2489e-3, 1.0154e-4),
+}
+
+
+@dataclass(frozen=True)
+class Composition:
+    """Mass fractions of a food; carbohydrate without fibre. They are scaled to add up to 1.
+
+    Raises ``InputOutOfRange`` when they add up to less than 0.95 or more than 1.05, or one is outside 0 to 1.
+    """
+
+    water: float
+    protein: float = 0.0
+    fat: float = 0.0
+    carbohydrate: float = 0.0
+    fibre: float = 0.0
+    ash: float = 0.0
+
+    def __post_init__(self) -> None:
+        for name, value in self.fractions().items():
+            if not 0.0 <= value <= 1.0:
+                raise InputOutOfRange(name, value, "", 0.0, 1.0)
+        if not 0.95 <= self.total() <= 1.05:
+            raise InputOutOfRange("sum of the fractions", self.total(), "", 0.95, 1.05)
+
+    def fractions(self) -> dict[str, float]:
+        """The fractions by name, as they were given."""
+        return {
+            "water": self.water, "protein": self.protein, "fat": self.fat, "carbohydrate": self.carbohydrate,
+            "fibre": self.fibre, "ash": self.ash,
+        }
+
+    def total(self) -> float:
+        """What the fractions add up to."""
+        return sum(self.fractions().values())
+
+    def scaled(self) -> dict[str, float]:
+        """The fractions by name, scaled to add up to 1."""
+        return {name: value / self.total() for name, value in self.fractions().items()}
+
+
+def component_specific_heat_j_per_kg_k(component: str, temperature_c: float) -> float:
+    """Specific heat of one component of food. [J/kg·K]
+
+    Parameters
+    ----------
+    component : str
+        ``water``, ``ice``, ``protein``, ``fat``, ``carbohydrate``, ``fibre`` or ``ash``. [-]
+    temperature_c : float
+        Of the component. [°C]
+
+    Returns
+    -------
+    float
+        Specific heat. [J/kg·K]
+
+    Notes
+    -----
+    Valid -40 to 150 °C, ice to 0 °C; liquid water from 0 °C.
+
+    Examples
+    --------
+    >>> component_specific_heat_j_per_kg_k("water", 5.0)
+    4175.9
+
+    References
+    ----------
+    Choi and Okos (1986), ASHRAE Handbook Refrigeration 2006, ch. 9, Tables 1 and 2.
+    """
+    return _polynomial(_SPECIFIC_HEAT[component], temperature_c)
+
+
+def component_density_kg_per_m3(component: str, temperature_c: float) -> float:
+    """Density of one component of food. [kg/m³]
+
+    Parameters
+    ----------
+    component : str
+        As for the specific heat. [-]
+    temperature_c : float
+        Of the component. [°C]
+
+    Returns
+    -------
+    float
+        Density. [kg/m³]
+
+    Notes
+    -----
+    Valid -40 to 150 °C.
+
+    Examples
+    --------
+    >>> component_density_kg_per_m3("ice", -20.0)
+    919.5
+
+    References
+    ----------
+    Choi and Okos (1986), ASHRAE Handbook Refrigeration 2006, ch. 9, Tables 1 and 2.
+    """
+    return _polynomial(_DENSITY[component], temperature_c)
+
+
+def component_conductivity_w_per_m_k(component: str, temperature_c: float) -> float:
+    """Thermal conductivity of one component of food. [W/m·K]
+
+    Parameters
+    ----------
+    component : str
+        As for the specific heat. [-]
+    temperature_c : float
+        Of the component. [°C]
+
+    Returns
+    -------
+    float
+        Conductivity. [W/m·K]
+
+    Notes
+    -----
+    Valid -40 to 150 °C.
+
+    Examples
+    --------
+    >>> component_conductivity_w_per_m_k("water", 0.0)
+    0.5711
+
+    References
+    ----------
+    Choi and Okos (1986), ASHRAE Handbook Refrigeration 2006, ch. 9, Tables 1 and 2.
+    """
+    return _polynomial(_CONDUCTIVITY[component], temperature_c)
+
+
+def specific_heat_j_per_kg_k(composition: Composition, temperature_c: float) -> float:
+    """Specific heat of unfrozen food. [J/kg·K]
+
+    Parameters
+    ----------
+    composition : Composition
+        Mass fractions. [-]
+    temperature_c : float
+        Above freezing. [°C]
+
+    Returns
+    -------
+    float
+        Sum over the components. [J/kg·K]
+
+    Notes
+    -----
+    Above the initial freezing point only.
+
+    Examples
+    --------
+    >>> milk = Composition(water=0.8799, protein=0.0329, fat=0.0334, carbohydrate=0.0466, ash=0.0072)
+    >>> specific_heat_j_per_kg_k(milk, 5.0)
+    3888.
+
+    References
+    ----------
+    ASHRAE Handbook Refrigeration 2006, ch. 9, mixing rule for specific heat.
+    """
+    return sum(
+        share * component_specific_heat_j_per_kg_k(name, temperature_c)
+        for name, share in composition.scaled().items()
+    )
+
+
+def bound_water_fraction(composition: Composition) -> float:
+    """Water that does not freeze. [kg/kg]
+
+    Parameters
+    ----------
+    composition : Composition
+        Mass fractions. [-]
+
+    Returns
+    -------
+    float
+        0.4 times the protein, at most the water there is. [kg/kg]
+
+    Notes
+    -----
+    Foods; pure solutions have none.
+
+    Examples
+    --------
+    >>> bound_water_fraction(Composition(water=0.8122, protein=0.1781, ash=0.0116))
+    0.071
+
+    References
+    ----------
+    Schwartzberg (1976) in ASHRAE Handbook Refrigeration 2006, ch. 9.
+    """
+    return min(0.4 * composition.protein, composition.water)
+
+
+def ice_fraction(*, free_water: float, initial_freezing_c: float, temperature_c: float) -> float:
+    """Ice in a kilogram of food. [kg/kg]
+
+    Parameters
+    ----------
+    free_water : float
+        Water that can freeze, kilograms per kilogram of food. [-]
+    initial_freezing_c : float
+        Where freezing begins, below 0. [°C]
+    temperature_c : float
+        Of the food. [°C]
+
+    Returns
+    -------
+    float
+        ``x (1 - tf / t)``, none above the freezing point. [kg/kg]
+
+    Notes
+    -----
+    Ideal solution; models of ice content differ by 5 to 20 %.
+
+    Examples
+    --------
+    >>> ice_fraction(free_water=0.741, initial_freezing_c=-2.2, temperature_c=-18.0)
+    0.650
+
+    References
+    ----------
+    Miles (1974), Chen (1985) in ASHRAE Handbook Refrigeration 2006, ch. 9.
+    """
+    if temperature_c >= initial_freezing_c:
+        return 0.0
+    return free_water * (1.0 - initial_freezing_c / temperature_c)
+
+
+def ice_fraction_by_tchigeov(*, water: float, initial_freezing_c: float, temperature_c: float) -> float:
+    """Ice in a kilogram of food by an empirical relation, for comparison. [kg/kg]
+
+    Parameters
+    ----------
+    water : float
+        Water of the unfrozen food. [-]
+    initial_freezing_c : float
+        Where freezing begins, below 0. [°C]
+    temperature_c : float
+        Of the food. [°C]
+
+    Returns
+    -------
+    float
+        ``1.105 x / (1 + 0.7138 / ln(tf - t + 1))``. [kg/kg]
+
+    Notes
+    -----
+    Between the freezing point and -45 °C.
+
+    Examples
+    --------
+    >>> ice_fraction_by_tchigeov(water=0.8122, initial_freezing_c=-2.2, temperature_c=-18.0)
+    0.716
+
+    References
+    ----------
+    Tchigeov (1979) in ASHRAE Handbook Refrigeration 2006, ch. 9.
+    """
+    if temperature_c >= initial_freezing_c:
+        return 0.0
+    return 1.105 * water / (1.0 + 0.7138 / math.log(initial_freezing_c - temperature_c + 1.0))
+
+
+def conductivity_w_per_m_k(composition: Composition, ice: float, temperature_c: float) -> float:
+    """Thermal conductivity of food with some of its water frozen. [W/m·K]
+
+    Parameters
+    ----------
+    composition : Composition
+        Mass fractions. [-]
+    ice : float
+        Ice in a kilogram of food. [kg/kg]
+    temperature_c : float
+        Of the food. [°C]
+
+    Returns
+    -------
+    float
+        Geometric mean of the parallel and the perpendicular bound. [W/m·K]
+
+    Notes
+    -----
+    Without pores. Between the two bounds of the handbook; the geometric mean of both is our choice, within
+    the scatter of the published mixing rules (common practice).
+
+    Examples
+    --------
+    >>> beef = Composition(water=0.717, protein=0.2124, fat=0.044, ash=0.0108)
+    >>> conductivity_w_per_m_k(beef, 0.0, 5.0)
+    0.44
+
+    References
+    ----------
+    ASHRAE Handbook Refrigeration 2006, ch. 9, parallel and perpendicular models.
+    """
+    parallel, perpendicular = conductivity_bounds_w_per_m_k(composition, ice, temperature_c)
+    return float((parallel * perpendicular) ** 0.5)
+
+
+def conductivity_bounds_w_per_m_k(
+    composition: Composition, ice: float, temperature_c: float
+) -> tuple[float, float]:
+    """Highest and lowest conductivity that the components allow. [W/m·K]
+
+    Parameters
+    ----------
+    composition : Composition
+        Mass fractions. [-]
+    ice : float
+        Ice in a kilogram of food. [kg/kg]
+    temperature_c : float
+        Of the food. [°C]
+
+    Returns
+    -------
+    tuple of float
+        Heat along the layers, heat across them. [W/m·K]
+
+    Notes
+    -----
+    Without pores.
+
+    Examples
+    --------
+    >>> pork = Composition(water=0.7263, protein=0.1955, fat=0.0714, ash=0.0102)
+    >>> along, across = conductivity_bounds_w_per_m_k(pork, 0.6715, -40.0)
+    >>> round(along, 1), round(across, 1)
+    (2.0, 0.5)
+
+    References
+    ----------
+    ASHRAE Handbook Refrigeration 2006, ch. 9.
+    """
+    volumes = _volumes(composition, ice, temperature_c)
+    total = sum(volumes.values())
+    shares = {name: volume / total for name, volume in volumes.items()}
+    parallel = sum(
+        share * component_conductivity_w_per_m_k(name, temperature_c) for name, share in shares.items()
+    )
+    across = sum(
+        share / component_conductivity_w_per_m_k(name, temperature_c) for name, share in shares.items()
+    )
+    return parallel, 1.0 / across
+
+
+def density_kg_per_m3(composition: Composition, ice: float, temperature_c: float) -> float:
+    """Density of food without pores. [kg/m³]
+
+    Parameters
+    ----------
+    composition : Composition
+        Mass fractions. [-]
+    ice : float
+        Ice in a kilogram of food. [kg/kg]
+    temperature_c : float
+        Of the food. [°C]
+
+    Returns
+    -------
+    float
+        Density. [kg/m³]
+
+    Notes
+    -----
+    Pores are not counted.
+
+    Examples
+    --------
+    >>> pork = Composition(water=0.7263, protein=0.1955, fat=0.0714, ash=0.0102)
+    >>> round(density_kg_per_m3(pork, 0.6715, -40.0), -1)
+    1000.
+
+    References
+    ----------
+    ASHRAE Handbook Refrigeration 2006, ch. 9.
+    """
+    return 1.0 / sum(_volumes(composition, ice, temperature_c).values())
+
+
+def food_curve(composition: Composition, *, initial_freezing_c: float) -> EnthalpyCurve:
+    """Enthalpy curve of a food, 0 at -40 °C.
+
+    Parameters
+    ----------
+    composition : Composition
+        Mass fractions. [-]
+    initial_freezing_c : float
+        Where freezing begins, -38 to -0.05. [°C]
+
+    Returns
+    -------
+    EnthalpyCurve
+        Solids and ice below -40 °C, the freezing range up to the freezing point, unfrozen above. [J/kg]
+
+    Raises
+    ------
+    InputOutOfRange
+        Freezing point outside its range.
+
+    Notes
+    -----
+    Freezing range from -40 °C; below, the ice of -40 °C stays and solids and ice have their own heat.
+
+    Examples
+    --------
+    >>> cod = food_curve(Composition(water=0.8122, protein=0.1781, ash=0.0097), initial_freezing_c=-2.2)
+    >>> round(cod.enthalpy_j_per_kg(-18.0) / 1000.0, 1)
+    55.9
+
+    References
+    ----------
+    Chen (1985) in ASHRAE Handbook Refrigeration 2006, ch. 9; Choi and Okos (1986) below -40 °C.
+    """
+    if not -38.0 <= initial_freezing_c <= -0.05:
+        raise InputOutOfRange("initial_freezing_c", initial_freezing_c, "°C", -38.0, -0.05)
+    solids = 1.0 - composition.water
+    free = composition.water - bound_water_fraction(composition)
+    bend = -free * LATENT_HEAT_OF_WATER_J_PER_KG * initial_freezing_c
+    frozen = 1550.0 + 1260.0 * solids
+    unfrozen = 4190.0 - 2300.0 * solids - 628.0 * solids**3
+    top = segment_enthalpy(FREEZING, COLDEST_OF_CURVE_C, 0.0, frozen, bend, initial_freezing_c)
+    ice = ice_fraction(
+        free_water=free, initial_freezing_c=initial_freezing_c, temperature_c=COLDEST_OF_CURVE_C
+    )
+    return EnthalpyCurve(
+        (
+            _below(composition, ice),
+            Segment(FREEZING, COLDEST_OF_CURVE_C, initial_freezing_c, 0.0, top, frozen, bend, ice, 0.0),
+            Segment(
+                LINEAR, initial_freezing_c, initial_freezing_c + _ABOVE_FREEZING_K, top,
+                top + unfrozen * _ABOVE_FREEZING_K, unfrozen,
+            ),
+        ),
+        conductivity_liquid_w_per_m_k=conductivity_w_per_m_k(composition, 0.0, max(initial_freezing_c, 0.0)),
+        conductivity_solid_w_per_m_k=conductivity_w_per_m_k(composition, ice, _FROZEN_CONDUCTIVITY_AT_C),
+        density_kg_per_m3=density_kg_per_m3(composition, 0.0, 0.0),
+    )
+
+
+def _below(composition: Composition, ice: float) -> Segment:
+    """Heat of solids, unfrozen water and ice below the freezing range, ending at 0 J/kg."""
+
+    def heat(at_c: float) -> float:
+        shares = composition.scaled()
+        unfrozen = max(shares.pop("water") - ice, 0.0)
+        solids = sum(x * component_specific_heat_j_per_kg_k(name, at_c) for name, x in shares.items())
+        # what stays unfrozen is bound to the solids; it is given the heat of ice
+        return solids + (ice + unfrozen) * component_specific_heat_j_per_kg_k("ice", at_c)
+
+    cold, warm = heat(_BELOW_CURVE_C), heat(COLDEST_OF_CURVE_C)
+    width = COLDEST_OF_CURVE_C - _BELOW_CURVE_C
+    start = -0.5 * (cold + warm) * width
+    return Segment(
+        QUADRATIC, _BELOW_CURVE_C, COLDEST_OF_CURVE_C, start, 0.0, cold, (warm - cold) / width, ice, ice
+    )
+
+
+def _volumes(composition: Composition, ice: float, temperature_c: float) -> dict[str, float]:
+    """Cubic metres of each component in a kilogram."""
+    masses = composition.scaled()
+    masses["water"] = max(masses["water"] - ice, 0.0)
+    masses["ice"] = ice
+    return {
+        name: mass / component_density_kg_per_m3(name, temperature_c) for name, mass in masses.items() if mass > 0.0
+    }
+
+
+def _polynomial(coefficients: tuple[float, float, float], temperature_c: float) -> float:
+    constant, linear, square = coefficients
+    return constant + linear * temperature_c + square * temperature_c**2
