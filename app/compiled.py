@@ -42,6 +42,4 @@ def compiled(function: _Function) -> _Function:
 
 def compiled_inline(function: _Function) -> _Function:
     """Like ``compiled``, for a function of a few lines that is called in the innermost loop."""
-    return cast(
-        _Function, numba.njit(cache=True, nogil=True, error_model="numpy", inline="always")(function)
-    )
+    return cast(_Function, numba.njit(cache=True, nogil=True, error_model="numpy", inline="always")(function))

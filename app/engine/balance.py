@@ -11,14 +11,19 @@ import numpy as np
 from app.compiled import compiled, compiled_inline
 from app.engine.network import FILM, SERIES
 from app.physics import (
-    LINEAR, film_flow_w, segment_ice, segment_ice_slope, segment_slope, segment_temperature,
+    LINEAR,
+    film_flow_w,
+    segment_ice,
+    segment_ice_slope,
+    segment_slope,
+    segment_temperature,
 )
 
 STAGE = 0
 """First of the six rows of stages: heat flows before a stage is solved, changes of enthalpy after. [W, J]"""
 
-ENERGY, NEW, AT, START_W, START_SLOPE, PUSHED, OWN, FROM_PARENT, DIAGONAL, INVERSE, LIFT, THIRD, FOURTH = range(
-    6, 19
+ENERGY, NEW, AT, START_W, START_SLOPE, PUSHED, OWN, FROM_PARENT, DIAGONAL, INVERSE, LIFT, THIRD, FOURTH = (
+    range(6, 19)
 )
 """Enthalpies [J], flows [W], temperature slopes [K/J], derivatives and pivots [1/s, s], continuation [J]."""
 
@@ -39,8 +44,12 @@ def read_states(bodies, segments, locked, rows, energy_row):
             temperature_c = segment["start_c"] + (energy_j - segment["start_j"]) * segment["k_per_j"]
         else:
             temperature_c = segment_temperature(
-                segment["shape"], segment["start_c"], segment["start_j"], segment["capacity_j_per_k"],
-                segment["bend"], energy_j,
+                segment["shape"],
+                segment["start_c"],
+                segment["start_j"],
+                segment["capacity_j_per_k"],
+                segment["bend"],
+                energy_j,
             )
         rows[TEMPERATURE, i] = temperature_c
         change = body["conductivity_solid"] - body["conductivity_liquid"]
@@ -64,8 +73,16 @@ def read_slopes(bodies, segments, locked, rows, energy_row):
         rows[SLOPE, i] = slope
         change = body["conductivity_solid"] - body["conductivity_liquid"]
         by_ice = segment_ice_slope(
-            segment["shape"], segment["start_c"], segment["end_c"], segment["start_j"], segment["end_j"],
-            segment["ice_start"], segment["ice_end"], rows[energy_row, i], temperature_c, slope,
+            segment["shape"],
+            segment["start_c"],
+            segment["end_c"],
+            segment["start_j"],
+            segment["end_j"],
+            segment["ice_start"],
+            segment["ice_end"],
+            rows[energy_row, i],
+            temperature_c,
+            slope,
         )
         rows[RESISTIVITY_SLOPE, i] = -rows[RESISTIVITY, i] * rows[RESISTIVITY, i] * change * by_ice
 
@@ -74,8 +91,15 @@ def read_slopes(bodies, segments, locked, rows, energy_row):
 def ice_share(segment, energy_j, temperature_c):
     """Share of full freezing on a segment."""
     return segment_ice(
-        segment["shape"], segment["start_c"], segment["end_c"], segment["start_j"], segment["end_j"],
-        segment["ice_start"], segment["ice_end"], energy_j, temperature_c,
+        segment["shape"],
+        segment["start_c"],
+        segment["end_c"],
+        segment["start_j"],
+        segment["end_j"],
+        segment["ice_start"],
+        segment["ice_end"],
+        energy_j,
+        temperature_c,
     )
 
 
@@ -96,8 +120,15 @@ def plain_conductance_w_per_k(body, rows, i):
 def film_link_flow_w(body, rows, i):
     """Heat flow from the air into a surface, and its change with the two temperatures. [W, W/K, W/K]"""
     return film_flow_w(
-        rows[TEMPERATURE, i], rows[TEMPERATURE, body["parent"]], body["area_m2"], body["base"], body["gain"],
-        body["is_sixth"], body["reference_c"], body["per_k"], body["emissivity"],
+        rows[TEMPERATURE, i],
+        rows[TEMPERATURE, body["parent"]],
+        body["area_m2"],
+        body["base"],
+        body["gain"],
+        body["is_sixth"],
+        body["reference_c"],
+        body["per_k"],
+        body["emissivity"],
         body["near_path_per_m"] * rows[RESISTIVITY, i],
     )
 

@@ -69,9 +69,17 @@ def march(network: Network, horizon_s: float, precision: Precision | None = None
     """
     precision = precision or Precision()
     status, reached_s, steps, refused, trace, energies_j, path_j, moved_j, path_start_w = march_one(
-        network.bodies, network.segments, network.boundaries, network.pieces, network.piece_starts,
-        network.stops_s, network.watches, len(network.path_names), float(horizon_s),
-        float(precision.tolerance), float(precision.longest_step_s),
+        network.bodies,
+        network.segments,
+        network.boundaries,
+        network.pieces,
+        network.piece_starts,
+        network.stops_s,
+        network.watches,
+        len(network.path_names),
+        float(horizon_s),
+        float(precision.tolerance),
+        float(precision.longest_step_s),
     )
     if status != FINISHED:
         raise SolverStopped(reached_s, _REASONS[status])

@@ -26,21 +26,44 @@ BODY_TEMPERATURE, SURFACE, WARMEST, COLDEST, MEAN, MELTED, SOLID_LEFT = 0, 1, 2,
 
 BODY = np.dtype(
     [
-        ("parent", np.int64), ("link", np.int64), ("conductance_w_per_k", np.float64),
-        ("resistance_k_per_w", np.float64), ("near_path_per_m", np.float64), ("far_path_per_m", np.float64),
-        ("area_m2", np.float64), ("base", np.float64), ("gain", np.float64), ("is_sixth", np.float64),
-        ("reference_c", np.float64), ("per_k", np.float64), ("emissivity", np.float64),
-        ("conductivity_liquid", np.float64), ("conductivity_solid", np.float64), ("resistivity", np.float64),
-        ("first_segment", np.int64), ("segments", np.int64), ("start_segment", np.int64),
-        ("start_j", np.float64), ("least_k_per_j", np.float64), ("tolerance_k", np.float64),
+        ("parent", np.int64),
+        ("link", np.int64),
+        ("conductance_w_per_k", np.float64),
+        ("resistance_k_per_w", np.float64),
+        ("near_path_per_m", np.float64),
+        ("far_path_per_m", np.float64),
+        ("area_m2", np.float64),
+        ("base", np.float64),
+        ("gain", np.float64),
+        ("is_sixth", np.float64),
+        ("reference_c", np.float64),
+        ("per_k", np.float64),
+        ("emissivity", np.float64),
+        ("conductivity_liquid", np.float64),
+        ("conductivity_solid", np.float64),
+        ("resistivity", np.float64),
+        ("first_segment", np.int64),
+        ("segments", np.int64),
+        ("start_segment", np.int64),
+        ("start_j", np.float64),
+        ("least_k_per_j", np.float64),
+        ("tolerance_k", np.float64),
         ("mass_kg", np.float64),
     ]
 )
 SEGMENT = np.dtype(
     [
-        ("shape", np.int64), ("start_c", np.float64), ("end_c", np.float64), ("start_j", np.float64),
-        ("end_j", np.float64), ("capacity_j_per_k", np.float64), ("k_per_j", np.float64), ("bend", np.float64),
-        ("ice_start", np.float64), ("ice_end", np.float64), ("end_tolerance_j", np.float64),
+        ("shape", np.int64),
+        ("start_c", np.float64),
+        ("end_c", np.float64),
+        ("start_j", np.float64),
+        ("end_j", np.float64),
+        ("capacity_j_per_k", np.float64),
+        ("k_per_j", np.float64),
+        ("bend", np.float64),
+        ("ice_start", np.float64),
+        ("ice_end", np.float64),
+        ("end_tolerance_j", np.float64),
     ]
 )
 BOUNDARY = np.dtype(
@@ -48,8 +71,12 @@ BOUNDARY = np.dtype(
 )
 WATCH = np.dtype(
     [
-        ("quantity", np.int64), ("first_body", np.int64), ("last_body", np.int64),
-        ("first_segment", np.int64), ("segments", np.int64), ("full", np.float64),
+        ("quantity", np.int64),
+        ("first_body", np.int64),
+        ("last_body", np.int64),
+        ("first_segment", np.int64),
+        ("segments", np.int64),
+        ("full", np.float64),
     ]
 )
 
@@ -201,11 +228,16 @@ class _Tables:
             last = index + 1 == len(curve.segments)
             self.segment_rows.append(
                 (
-                    segment.shape, segment.start_c, segment.end_c, segment.start_j_per_kg * mass_kg,
+                    segment.shape,
+                    segment.start_c,
+                    segment.end_c,
+                    segment.start_j_per_kg * mass_kg,
                     math.inf if last else segment.end_j_per_kg * mass_kg,
-                    segment.capacity_j_per_kg_k * mass_kg, 1.0 / (segment.capacity_j_per_kg_k * mass_kg),
+                    segment.capacity_j_per_kg_k * mass_kg,
+                    1.0 / (segment.capacity_j_per_kg_k * mass_kg),
                     segment.bend * mass_kg,
-                    segment.ice_start / full, segment.ice_end / full,
+                    segment.ice_start / full,
+                    segment.ice_end / full,
                     math.inf if last else _tolerance_j_per_kg(curve, index) * mass_kg,
                 )
             )
@@ -220,12 +252,19 @@ class _Tables:
             s.capacity_j_per_kg_k for s in body.curve.segments if math.isfinite(s.capacity_j_per_kg_k)
         )
         return (
-            body.parent, *_link_columns(body.link),
-            body.curve.conductivity_liquid_w_per_m_k, body.curve.conductivity_solid_w_per_m_k,
+            body.parent,
+            *_link_columns(body.link),
+            body.curve.conductivity_liquid_w_per_m_k,
+            body.curve.conductivity_solid_w_per_m_k,
             1.0 / body.curve.conductivity_liquid_w_per_m_k,
-            first, count, body.curve.segment_at(start), start * body.mass_kg,
+            first,
+            count,
+            body.curve.segment_at(start),
+            start * body.mass_kg,
             # what error is worth on a plateau, where enthalpy moves no temperature
-            0.2 / (capacity * body.mass_kg), body.tolerance_k, body.mass_kg,
+            0.2 / (capacity * body.mass_kg),
+            body.tolerance_k,
+            body.mass_kg,
         )
 
     def watch_row(self, watch: Watch, bodies: Sequence[Body]) -> tuple[float, ...]:
@@ -233,7 +272,8 @@ class _Tables:
         mass_kg = sum(body.mass_kg for body in item)
         first, count = self.curve_rows(item[0].curve, mass_kg) if watch.quantity == MEAN else (0, 0)
         start_ice = [
-            body.curve.ice_kg_per_kg(body.curve.enthalpy_j_per_kg(body.start_c)) * body.mass_kg for body in item
+            body.curve.ice_kg_per_kg(body.curve.enthalpy_j_per_kg(body.start_c)) * body.mass_kg
+            for body in item
         ]
         full = mass_kg * (item[0].curve.ice_full or 1.0)
         return (watch.quantity, watch.first_body, watch.last_body, first, count, sum(start_ice) / full)
@@ -250,8 +290,18 @@ def _link_columns(link: Link | None) -> tuple[float, ...]:
     if isinstance(link, FilmLink):
         law = link.law
         return (
-            FILM, 0.0, 0.0, link.near_path_per_m, 0.0, link.area_m2, law.base, law.gain,
-            float(math.isclose(law.exponent, 1.0 / 6.0)), law.reference_c, law.per_k, link.emissivity,
+            FILM,
+            0.0,
+            0.0,
+            link.near_path_per_m,
+            0.0,
+            link.area_m2,
+            law.base,
+            law.gain,
+            float(math.isclose(law.exponent, 1.0 / 6.0)),
+            law.reference_c,
+            law.per_k,
+            link.emissivity,
         )
     return FIXED, link.conductance_w_per_k if link is not None else 0.0, 0.0, 0.0, 0.0, *nothing
 

@@ -9,8 +9,24 @@ import numpy as np
 
 from app.compiled import compiled
 from app.engine.balance import (
-    AT, ENERGY, FOURTH, NEW, PUSHED, ROWS, SLOPE, STAGE, START_SLOPE, START_W, THIRD, drive_temperatures, eliminate,
-    linearise, rates, read_slopes, read_states, solve,
+    AT,
+    ENERGY,
+    FOURTH,
+    NEW,
+    PUSHED,
+    ROWS,
+    SLOPE,
+    STAGE,
+    START_SLOPE,
+    START_W,
+    THIRD,
+    drive_temperatures,
+    eliminate,
+    linearise,
+    rates,
+    read_slopes,
+    read_states,
+    solve,
 )
 from app.engine.rosenbrock import ALPHA, GAMMA, PUSH, STAGES, A, C
 from app.engine.rosenbrock import FOURTH as FOURTH_WEIGHTS
@@ -32,7 +48,16 @@ _SHRINK_LIMIT = 0.2
 
 @compiled
 def march_one(
-    bodies, segments, boundaries, pieces, piece_starts, stops_s, watches, n_paths, horizon_s, tolerance,
+    bodies,
+    segments,
+    boundaries,
+    pieces,
+    piece_starts,
+    stops_s,
+    watches,
+    n_paths,
+    horizon_s,
+    tolerance,
     longest_step_s,
 ):
     """March one network to the horizon: status, time reached, counts, trace, energies and heat by path.
@@ -70,7 +95,18 @@ def march_one(
             if time + h > end - 1e-6 * h:
                 h = end - time
             _stages(
-                bodies, segments, boundaries, pieces, piece_starts, piece, locked, rows, drives, path_w, time, h
+                bodies,
+                segments,
+                boundaries,
+                pieces,
+                piece_starts,
+                piece,
+                locked,
+                rows,
+                drives,
+                path_w,
+                time,
+                h,
             )
             error = _error(bodies, rows) / tolerance
             if not error <= 1.0:
@@ -105,7 +141,17 @@ def march_one(
         if not is_cut:
             step = max(h * growth, planned) if h < planned else h * growth
         time = end if h == end - time else time + h
-    return status, time, steps, refused, trace[:points].copy(), rows[ENERGY].copy(), path_j, moved_j, path_start_w
+    return (
+        status,
+        time,
+        steps,
+        refused,
+        trace[:points].copy(),
+        rows[ENERGY].copy(),
+        path_j,
+        moved_j,
+        path_start_w,
+    )
 
 
 @compiled
@@ -140,9 +186,7 @@ def _begin_step(
 
 
 @compiled
-def _stages(
-    bodies, segments, boundaries, pieces, piece_starts, piece, locked, rows, drives, path_w, time, h
-):
+def _stages(bodies, segments, boundaries, pieces, piece_starts, piece, locked, rows, drives, path_w, time, h):
     """The six stages of a step of ``h`` seconds, and the new energies."""
     n = bodies.shape[0]
     eliminate(bodies, rows, 1.0 / (GAMMA * h))
@@ -213,9 +257,7 @@ def _between(rows, share):
 @compiled
 def _one_between(rows, i, share):
     rest = 1.0 - share
-    return rest * rows[ENERGY, i] + share * (
-        rows[NEW, i] + rest * (rows[THIRD, i] + share * rows[FOURTH, i])
-    )
+    return rest * rows[ENERGY, i] + share * (rows[NEW, i] + rest * (rows[THIRD, i] + share * rows[FOURTH, i]))
 
 
 @compiled

@@ -41,7 +41,11 @@ def _mean_c(segments, watch, rows, energy_row):
         s += 1
     segment = segments[s]
     return segment_temperature(
-        segment["shape"], segment["start_c"], segment["start_j"], segment["capacity_j_per_k"], segment["bend"],
+        segment["shape"],
+        segment["start_c"],
+        segment["start_j"],
+        segment["capacity_j_per_k"],
+        segment["bend"],
         total_j,
     )
 

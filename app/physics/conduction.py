@@ -313,7 +313,12 @@ def half_space_depth_m(*, share: float, diffusivity_m2_per_s: float, time_s: flo
 
 
 def half_space_flux_rise_k(
-    *, flux_w_per_m2: float, conductivity_w_per_m_k: float, diffusivity_m2_per_s: float, depth_m: float, time_s: float
+    *,
+    flux_w_per_m2: float,
+    conductivity_w_per_m_k: float,
+    diffusivity_m2_per_s: float,
+    depth_m: float,
+    time_s: float,
 ) -> float:
     """Rise of temperature in a half-space whose face takes a constant flux. [K]
 
@@ -357,7 +362,11 @@ def half_space_flux_rise_k(
 
 
 def half_space_film_share(
-    *, film_w_per_m2_k: float, conductivity_w_per_m_k: float, diffusivity_m2_per_s: float, depth_m: float,
+    *,
+    film_w_per_m2_k: float,
+    conductivity_w_per_m_k: float,
+    diffusivity_m2_per_s: float,
+    depth_m: float,
     time_s: float,
 ) -> float:
     """How far a half-space behind a film has come towards the fluid. [-]
@@ -400,9 +409,7 @@ def half_space_film_share(
     return float(erfc(x)) - math.exp(-x * x) * float(erfcx(x + y))
 
 
-def slab_share(
-    *, biot: float, fourier: float, position: float, terms: int = 40
-) -> tuple[float, float]:
+def slab_share(*, biot: float, fourier: float, position: float, terms: int = 40) -> tuple[float, float]:
     """What is left of the first difference in a slab behind films on both sides. [-]
 
     Parameters
@@ -437,7 +444,9 @@ def slab_share(
     """
     here = mean = 0.0
     for n in range(terms):
-        zeta = float(brentq(lambda z: z * math.sin(z) - biot * math.cos(z), n * math.pi + 1e-9, (n + 0.5) * math.pi))
+        zeta = float(
+            brentq(lambda z: z * math.sin(z) - biot * math.cos(z), n * math.pi + 1e-9, (n + 0.5) * math.pi)
+        )
         weight = 4.0 * math.sin(zeta) / (2.0 * zeta + math.sin(2.0 * zeta)) * math.exp(-zeta * zeta * fourier)
         here += weight * math.cos(zeta * position)
         mean += weight * math.sin(zeta) / zeta
@@ -493,9 +502,6 @@ def dynamic_wall(
     lag_s = (-np.angle(-1.0 / z12) % (2.0 * math.pi)) * period_s / (2.0 * math.pi)
     capacity = period_s / (2.0 * math.pi) * abs((z11 - 1.0) / z12)
     return DynamicWall(u, periodic, periodic / u, hours_from_seconds(lag_s), capacity)
-
-
-
 
 
 def _layer_matrix(layer: SolidLayer, period_s: float) -> np.ndarray:

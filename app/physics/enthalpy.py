@@ -43,9 +43,7 @@ class Segment:
 
     def slope_k_per_j(self, temperature_c: float) -> float:
         """How fast temperature rises with enthalpy at a temperature of the segment; 0 on a plateau. [K kg/J]"""
-        return segment_slope(
-            self.shape, self.start_c, self.capacity_j_per_kg_k, self.bend, temperature_c
-        )
+        return segment_slope(self.shape, self.start_c, self.capacity_j_per_kg_k, self.bend, temperature_c)
 
 
 @dataclass(frozen=True)
@@ -74,8 +72,12 @@ class EnthalpyCurve:
                 segment = candidate
                 break
         return segment_enthalpy(
-            segment.shape, segment.start_c, segment.start_j_per_kg, segment.capacity_j_per_kg_k,
-            segment.bend, temperature_c,
+            segment.shape,
+            segment.start_c,
+            segment.start_j_per_kg,
+            segment.capacity_j_per_kg_k,
+            segment.bend,
+            temperature_c,
         )
 
     def segment_at(self, enthalpy_j_per_kg: float) -> int:
@@ -89,16 +91,27 @@ class EnthalpyCurve:
         """Temperature at an enthalpy. [°C]"""
         segment = self.segments[self.segment_at(enthalpy_j_per_kg)]
         return segment_temperature(
-            segment.shape, segment.start_c, segment.start_j_per_kg, segment.capacity_j_per_kg_k,
-            segment.bend, enthalpy_j_per_kg,
+            segment.shape,
+            segment.start_c,
+            segment.start_j_per_kg,
+            segment.capacity_j_per_kg_k,
+            segment.bend,
+            enthalpy_j_per_kg,
         )
 
     def ice_kg_per_kg(self, enthalpy_j_per_kg: float) -> float:
         """Ice, or unmelted solid, at an enthalpy. [kg/kg]"""
         segment = self.segments[self.segment_at(enthalpy_j_per_kg)]
         return segment_ice(
-            segment.shape, segment.start_c, segment.end_c, segment.start_j_per_kg, segment.end_j_per_kg,
-            segment.ice_start, segment.ice_end, enthalpy_j_per_kg, self.temperature_c(enthalpy_j_per_kg),
+            segment.shape,
+            segment.start_c,
+            segment.end_c,
+            segment.start_j_per_kg,
+            segment.end_j_per_kg,
+            segment.ice_start,
+            segment.ice_end,
+            enthalpy_j_per_kg,
+            self.temperature_c(enthalpy_j_per_kg),
         )
 
     def with_capacity(self, extra_j_per_kg_k: float) -> EnthalpyCurve:
@@ -159,9 +172,7 @@ def segment_temperature(
 
 
 @compiled
-def segment_slope(
-    shape: int, start_c: float, capacity: float, bend: float, temperature_c: float
-) -> float:
+def segment_slope(shape: int, start_c: float, capacity: float, bend: float, temperature_c: float) -> float:
     """How fast temperature rises with enthalpy on one segment, at a temperature; 0 on a plateau. [K/J]"""
     if shape == QUADRATIC:
         return 1.0 / max(capacity + bend * (temperature_c - start_c), 0.5 * capacity)
@@ -178,8 +189,15 @@ def _quadratic_root(capacity: float, bend: float, gained: float) -> float:
 
 @compiled
 def segment_ice(
-    shape: int, start_c: float, end_c: float, start_j: float, end_j: float, ice_start: float, ice_end: float,
-    enthalpy_j: float, temperature_c: float,
+    shape: int,
+    start_c: float,
+    end_c: float,
+    start_j: float,
+    end_j: float,
+    ice_start: float,
+    ice_end: float,
+    enthalpy_j: float,
+    temperature_c: float,
 ) -> float:
     """Ice at an enthalpy on one segment, held between its ends. [kg/kg]"""
     if ice_start == ice_end or enthalpy_j <= start_j:
@@ -196,8 +214,16 @@ def segment_ice(
 
 @compiled
 def segment_ice_slope(
-    shape: int, start_c: float, end_c: float, start_j: float, end_j: float, ice_start: float, ice_end: float,
-    enthalpy_j: float, temperature_c: float, k_per_j: float,
+    shape: int,
+    start_c: float,
+    end_c: float,
+    start_j: float,
+    end_j: float,
+    ice_start: float,
+    ice_end: float,
+    enthalpy_j: float,
+    temperature_c: float,
+    k_per_j: float,
 ) -> float:
     """Change of ice with enthalpy on one segment; 0 beyond its ends. [kg/kg per J]"""
     if ice_start == ice_end or enthalpy_j <= start_j or enthalpy_j >= end_j:

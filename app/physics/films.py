@@ -133,7 +133,11 @@ def air_properties(temperature_c: float) -> AirProperties:
 
 
 def rayleigh_number(
-    *, difference_k: float, length_m: float, expansion_per_k: float, viscosity_m2_per_s: float,
+    *,
+    difference_k: float,
+    length_m: float,
+    expansion_per_k: float,
+    viscosity_m2_per_s: float,
     diffusivity_m2_per_s: float,
 ) -> float:
     """Strength of natural convection. [-]
@@ -595,8 +599,11 @@ def vertical_plate_law(*, height_m: float, reference_c: float) -> FilmLaw:
     def parts(at_c: float) -> tuple[float, float]:
         air = air_properties(at_c)
         per_difference = rayleigh_number(
-            difference_k=1.0, length_m=height_m, expansion_per_k=1.0 / (at_c + ZERO_CELSIUS_K),
-            viscosity_m2_per_s=air.viscosity_m2_per_s, diffusivity_m2_per_s=air.diffusivity_m2_per_s,
+            difference_k=1.0,
+            length_m=height_m,
+            expansion_per_k=1.0 / (at_c + ZERO_CELSIUS_K),
+            viscosity_m2_per_s=air.viscosity_m2_per_s,
+            diffusivity_m2_per_s=air.diffusivity_m2_per_s,
         )
         scale = math.sqrt(air.conductivity_w_per_m_k / height_m)
         factor = _prandtl_factor(air.prandtl, 0.492) ** (8.0 / 27.0)
@@ -645,8 +652,11 @@ def horizontal_cylinder_law(*, diameter_m: float, reference_c: float) -> FilmLaw
     def parts(at_c: float) -> tuple[float, float]:
         air = air_properties(at_c)
         per_difference = rayleigh_number(
-            difference_k=1.0, length_m=diameter_m, expansion_per_k=1.0 / (at_c + ZERO_CELSIUS_K),
-            viscosity_m2_per_s=air.viscosity_m2_per_s, diffusivity_m2_per_s=air.diffusivity_m2_per_s,
+            difference_k=1.0,
+            length_m=diameter_m,
+            expansion_per_k=1.0 / (at_c + ZERO_CELSIUS_K),
+            viscosity_m2_per_s=air.viscosity_m2_per_s,
+            diffusivity_m2_per_s=air.diffusivity_m2_per_s,
         )
         scale = math.sqrt(air.conductivity_w_per_m_k / diameter_m)
         factor = _prandtl_factor(air.prandtl, 0.559) ** (8.0 / 27.0)
@@ -657,8 +667,16 @@ def horizontal_cylinder_law(*, diameter_m: float, reference_c: float) -> FilmLaw
 
 @compiled
 def film_flow_w(
-    surface_c: float, air_c: float, area_m2: float, base: float, gain: float, is_sixth: float, reference_c: float,
-    per_k: float, emissivity: float, series_k_per_w: float,
+    surface_c: float,
+    air_c: float,
+    area_m2: float,
+    base: float,
+    gain: float,
+    is_sixth: float,
+    reference_c: float,
+    per_k: float,
+    emissivity: float,
+    series_k_per_w: float,
 ) -> tuple[float, float, float]:
     """Heat flow from still air into a body behind its surface, and its change with the two temperatures.
 
@@ -725,7 +743,9 @@ def film_flow_w(
     by_surface = area_m2 * (-steep + difference * (bend + grey * (2.0 * one * (one + two) + squares)))
     by_air = area_m2 * (steep + difference * (bend + grey * (2.0 * two * (one + two) + squares)))
     return (
-        conductance * difference, -conductance + share * share * by_surface, conductance + share * share * by_air
+        conductance * difference,
+        -conductance + share * share * by_surface,
+        conductance + share * share * by_air,
     )
 
 

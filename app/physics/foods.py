@@ -24,21 +24,32 @@ _ABOVE_FREEZING_K = 100.0
 
 # value at 0 °C, per °C, per °C²: Choi and Okos (1986), ASHRAE Refrigeration 2006, ch. 9, Tables 1 and 2
 _DENSITY = {
-    "protein": (1329.9, -0.51840, 0.0), "fat": (925.59, -0.41757, 0.0), "carbohydrate": (1599.1, -0.31046, 0.0),
-    "fibre": (1311.5, -0.36589, 0.0), "ash": (2423.8, -0.28063, 0.0), "water": (997.18, 3.1439e-3, -3.7574e-3),
+    "protein": (1329.9, -0.51840, 0.0),
+    "fat": (925.59, -0.41757, 0.0),
+    "carbohydrate": (1599.1, -0.31046, 0.0),
+    "fibre": (1311.5, -0.36589, 0.0),
+    "ash": (2423.8, -0.28063, 0.0),
+    "water": (997.18, 3.1439e-3, -3.7574e-3),
     "ice": (916.89, -0.13071, 0.0),
 }
 # Two constants circulate for liquid water, 4176.2 and 4128.9: only 4176.2 gives the handbook's own products.
 # Its polynomial for below 0 °C is left out: unfrozen water in food is covered by the freezing range.
 _SPECIFIC_HEAT = {
-    "protein": (2008.2, 1.2089, -1.3129e-3), "fat": (1984.2, 1.4733, -4.8008e-3),
-    "carbohydrate": (1548.8, 1.9625, -5.9399e-3), "fibre": (1845.9, 1.8306, -4.6509e-3),
-    "ash": (1092.6, 1.8896, -3.6817e-3), "water": (4176.2, -9.0864e-2, 5.4731e-3), "ice": (2062.3, 6.0769, 0.0),
+    "protein": (2008.2, 1.2089, -1.3129e-3),
+    "fat": (1984.2, 1.4733, -4.8008e-3),
+    "carbohydrate": (1548.8, 1.9625, -5.9399e-3),
+    "fibre": (1845.9, 1.8306, -4.6509e-3),
+    "ash": (1092.6, 1.8896, -3.6817e-3),
+    "water": (4176.2, -9.0864e-2, 5.4731e-3),
+    "ice": (2062.3, 6.0769, 0.0),
 }
 _CONDUCTIVITY = {
-    "protein": (0.17881, 1.1958e-3, -2.7178e-6), "fat": (0.18071, -2.7604e-4, -1.7749e-7),
-    "carbohydrate": (0.20141, 1.3874e-3, -4.3312e-6), "fibre": (0.18331, 1.2497e-3, -3.1683e-6),
-    "ash": (0.32962, 1.4011e-3, -2.9069e-6), "water": (0.57109, 1.7625e-3, -6.7036e-6),
+    "protein": (0.17881, 1.1958e-3, -2.7178e-6),
+    "fat": (0.18071, -2.7604e-4, -1.7749e-7),
+    "carbohydrate": (0.20141, 1.3874e-3, -4.3312e-6),
+    "fibre": (0.18331, 1.2497e-3, -3.1683e-6),
+    "ash": (0.32962, 1.4011e-3, -2.9069e-6),
+    "water": (0.57109, 1.7625e-3, -6.7036e-6),
     "ice": (2.2196, -6.2489e-3, 1.0154e-4),
 }
 
@@ -67,8 +78,12 @@ class Composition:
     def fractions(self) -> dict[str, float]:
         """The fractions by name, as they were given."""
         return {
-            "water": self.water, "protein": self.protein, "fat": self.fat, "carbohydrate": self.carbohydrate,
-            "fibre": self.fibre, "ash": self.ash,
+            "water": self.water,
+            "protein": self.protein,
+            "fat": self.fat,
+            "carbohydrate": self.carbohydrate,
+            "fibre": self.fibre,
+            "ash": self.ash,
         }
 
     def total(self) -> float:
@@ -473,8 +488,12 @@ def food_curve(composition: Composition, *, initial_freezing_c: float) -> Enthal
             _below(composition, ice),
             Segment(FREEZING, COLDEST_OF_CURVE_C, initial_freezing_c, 0.0, top, frozen, bend, ice, 0.0),
             Segment(
-                LINEAR, initial_freezing_c, initial_freezing_c + _ABOVE_FREEZING_K, top,
-                top + unfrozen * _ABOVE_FREEZING_K, unfrozen,
+                LINEAR,
+                initial_freezing_c,
+                initial_freezing_c + _ABOVE_FREEZING_K,
+                top,
+                top + unfrozen * _ABOVE_FREEZING_K,
+                unfrozen,
             ),
         ),
         conductivity_liquid_w_per_m_k=conductivity_w_per_m_k(composition, 0.0, max(initial_freezing_c, 0.0)),
@@ -507,7 +526,9 @@ def _volumes(composition: Composition, ice: float, temperature_c: float) -> dict
     masses["water"] = max(masses["water"] - ice, 0.0)
     masses["ice"] = ice
     return {
-        name: mass / component_density_kg_per_m3(name, temperature_c) for name, mass in masses.items() if mass > 0.0
+        name: mass / component_density_kg_per_m3(name, temperature_c)
+        for name, mass in masses.items()
+        if mass > 0.0
     }
 
 

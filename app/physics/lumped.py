@@ -11,7 +11,12 @@ from app.errors import InputOutOfRange
 
 
 def warming_time_s(
-    *, heat_capacity_j_per_k: float, heat_leak_w_per_k: float, surroundings_c: float, start_c: float, end_c: float
+    *,
+    heat_capacity_j_per_k: float,
+    heat_leak_w_per_k: float,
+    surroundings_c: float,
+    start_c: float,
+    end_c: float,
 ) -> float:
     """Time in which a lump warms from one temperature to another. [s]
 
@@ -53,7 +58,9 @@ def warming_time_s(
     """
     left = (surroundings_c - end_c) / (surroundings_c - start_c) if surroundings_c != start_c else math.nan
     if not 0.0 < left <= 1.0:
-        raise InputOutOfRange("end_c", end_c, "°C", min(start_c, surroundings_c), max(start_c, surroundings_c))
+        raise InputOutOfRange(
+            "end_c", end_c, "°C", min(start_c, surroundings_c), max(start_c, surroundings_c)
+        )
     return -heat_capacity_j_per_k / heat_leak_w_per_k * math.log(left)
 
 
@@ -136,7 +143,9 @@ def day_swing(*, time_constant_s: float, swing_k: float, period_s: float) -> tup
     return swing_k / math.sqrt(1.0 + turned**2), math.atan(turned) * period_s / (2.0 * math.pi)
 
 
-def effective_film_w_per_m2_k(*, film_w_per_m2_k: float, length_m: float, conductivity_w_per_m_k: float, shape: str) -> float:
+def effective_film_w_per_m2_k(
+    *, film_w_per_m2_k: float, length_m: float, conductivity_w_per_m_k: float, shape: str
+) -> float:
     """Film that lets one lump stand for a body with an inside resistance. [W/m²·K]
 
     Parameters

@@ -125,9 +125,15 @@ def aqueous_curve(*, freezing_c: float, water_fraction: float | None = None) -> 
 
 
 def phase_change_curve(
-    *, melting_c: float, melting_range_k: float, latent_j_per_kg: float, specific_heat_solid_j_per_kg_k: float,
-    specific_heat_liquid_j_per_kg_k: float, conductivity_solid_w_per_m_k: float,
-    conductivity_liquid_w_per_m_k: float, density_kg_per_m3: float,
+    *,
+    melting_c: float,
+    melting_range_k: float,
+    latent_j_per_kg: float,
+    specific_heat_solid_j_per_kg_k: float,
+    specific_heat_liquid_j_per_kg_k: float,
+    conductivity_solid_w_per_m_k: float,
+    conductivity_liquid_w_per_m_k: float,
+    density_kg_per_m3: float,
 ) -> EnthalpyCurve:
     """Enthalpy curve of a salt eutectic or a phase-change material, 0 where melting begins.
 
@@ -176,9 +182,11 @@ def phase_change_curve(
     ----------
     Enthalpy method for melting (Voller and Cross 1981); a melting range of 2 K is common practice.
     """
-    for name, value in (("latent_j_per_kg", latent_j_per_kg),
-                        ("specific_heat_solid_j_per_kg_k", specific_heat_solid_j_per_kg_k),
-                        ("specific_heat_liquid_j_per_kg_k", specific_heat_liquid_j_per_kg_k)):
+    for name, value in (
+        ("latent_j_per_kg", latent_j_per_kg),
+        ("specific_heat_solid_j_per_kg_k", specific_heat_solid_j_per_kg_k),
+        ("specific_heat_liquid_j_per_kg_k", specific_heat_liquid_j_per_kg_k),
+    ):
         if not value > 0.0:
             raise InputOutOfRange(name, value, "", 0.0, None)
     if not melting_range_k >= 0.0:
@@ -195,7 +203,9 @@ def phase_change_curve(
             Segment(LINEAR, begins_c, ends_c, 0.0, melted, capacity, 0.0, 1.0, 0.0),
             _liquid(ends_c, melted, liquid),
         ),
-        conductivity_liquid_w_per_m_k, conductivity_solid_w_per_m_k, density_kg_per_m3,
+        conductivity_liquid_w_per_m_k,
+        conductivity_solid_w_per_m_k,
+        density_kg_per_m3,
     )
 
 
@@ -237,19 +247,26 @@ def constant_curve(
     ----------
     Definition of the specific heat.
     """
-    for name, value in (("specific_heat_j_per_kg_k", specific_heat_j_per_kg_k),
-                        ("conductivity_w_per_m_k", conductivity_w_per_m_k),
-                        ("density_kg_per_m3", density_kg_per_m3)):
+    for name, value in (
+        ("specific_heat_j_per_kg_k", specific_heat_j_per_kg_k),
+        ("conductivity_w_per_m_k", conductivity_w_per_m_k),
+        ("density_kg_per_m3", density_kg_per_m3),
+    ):
         if not value > 0.0:
             raise InputOutOfRange(name, value, "", 0.0, None)
     return EnthalpyCurve(
-        (_liquid(0.0, 0.0, specific_heat_j_per_kg_k),), conductivity_w_per_m_k, conductivity_w_per_m_k,
+        (_liquid(0.0, 0.0, specific_heat_j_per_kg_k),),
+        conductivity_w_per_m_k,
+        conductivity_w_per_m_k,
         density_kg_per_m3,
     )
 
 
 def curve_from_points(
-    *, temperature_c: Sequence[float], enthalpy_j_per_kg: Sequence[float], conductivity_w_per_m_k: float,
+    *,
+    temperature_c: Sequence[float],
+    enthalpy_j_per_kg: Sequence[float],
+    conductivity_w_per_m_k: float,
     density_kg_per_m3: float,
 ) -> EnthalpyCurve:
     """Enthalpy curve through given points, straight between them, its ends continued.
@@ -309,5 +326,10 @@ def curve_from_points(
 def _liquid(from_c: float, from_j: float, specific_heat: float) -> Segment:
     """What only warms, from a temperature on."""
     return Segment(
-        LINEAR, from_c, from_c + _LIQUID_RANGE_K, from_j, from_j + specific_heat * _LIQUID_RANGE_K, specific_heat
+        LINEAR,
+        from_c,
+        from_c + _LIQUID_RANGE_K,
+        from_j,
+        from_j + specific_heat * _LIQUID_RANGE_K,
+        specific_heat,
     )

@@ -87,7 +87,9 @@ class Baseline:
             rise = np.abs(other[film] - own[film]) ** np.where(f["is_sixth"] > 0.0, 1.0 / 6.0, 1.0 / 8.0)
             warmth = 1.0 - f["per_k"] * (0.5 * (own[film] + other[film]) - f["reference_c"])
             convection = (f["base"] + f["gain"] * rise) ** 2 * warmth
-            radiation = STEFAN_BOLTZMANN_W_PER_M2_K4 * f["emissivity"] * (own_k**2 + other_k**2) * (own_k + other_k)
+            radiation = (
+                STEFAN_BOLTZMANN_W_PER_M2_K4 * f["emissivity"] * (own_k**2 + other_k**2) * (own_k + other_k)
+            )
             conductance[film] = 1.0 / (1.0 / (f["area_m2"] * (convection + radiation)) + path[film])
         flow = conductance * (other - own)
         rate = np.zeros(self.n)
@@ -95,8 +97,10 @@ class Baseline:
         rate -= np.bincount(parent, weights=flow, minlength=self.n)
         now = np.array([time_s])
         drives = np.array(
-            [temperature_c(network.pieces[a:z], now)[0]
-             for a, z in zip(network.piece_starts[:-1], network.piece_starts[1:], strict=True)]
+            [
+                temperature_c(network.pieces[a:z], now)[0]
+                for a, z in zip(network.piece_starts[:-1], network.piece_starts[1:], strict=True)
+            ]
         )
         outside = network.boundaries
         gained = outside["conductance_w_per_k"] * (drives[outside["drive"]] - at_c[outside["body"]])
@@ -111,7 +115,14 @@ class Baseline:
         start = self.network.bodies["start_j"].astype(float)
         scale = np.abs(self.network.bodies["mass_kg"]) * 2000.0
         done = solve_ivp(
-            self, (0.0, horizon_s), start, method=method, rtol=rtol, atol=rtol * scale, events=passed, max_step=7200.0
+            self,
+            (0.0, horizon_s),
+            start,
+            method=method,
+            rtol=rtol,
+            atol=rtol * scale,
+            events=passed,
+            max_step=7200.0,
         )
         found = done.t_events[0]
         return Result(float(found[0]) if len(found) else np.nan, int(done.nfev))

@@ -24,8 +24,13 @@ def even_curve(
 
 
 def melting_curve(
-    solid_j_per_kg_k: float, liquid_j_per_kg_k: float, latent_j_per_kg: float, melting_c: float = 0.0,
-    solid_w_per_m_k: float = 2.22, liquid_w_per_m_k: float = 0.58, density_kg_per_m3: float = 917.0,
+    solid_j_per_kg_k: float,
+    liquid_j_per_kg_k: float,
+    latent_j_per_kg: float,
+    melting_c: float = 0.0,
+    solid_w_per_m_k: float = 2.22,
+    liquid_w_per_m_k: float = 0.58,
+    density_kg_per_m3: float = 917.0,
 ) -> EnthalpyCurve:
     """A pure substance: constant capacities on both sides of a plateau."""
     depth, height = 100.0 * solid_j_per_kg_k, 100.0 * liquid_j_per_kg_k
@@ -34,11 +39,20 @@ def melting_curve(
             Segment(LINEAR, melting_c - 100.0, melting_c, -depth, 0.0, solid_j_per_kg_k, 0.0, 1.0, 1.0),
             Segment(LINEAR, melting_c, melting_c, 0.0, latent_j_per_kg, math.inf, 0.0, 1.0, 0.0),
             Segment(
-                LINEAR, melting_c, melting_c + 100.0, latent_j_per_kg, latent_j_per_kg + height,
-                liquid_j_per_kg_k, 0.0, 0.0, 0.0,
+                LINEAR,
+                melting_c,
+                melting_c + 100.0,
+                latent_j_per_kg,
+                latent_j_per_kg + height,
+                liquid_j_per_kg_k,
+                0.0,
+                0.0,
+                0.0,
             ),
         ),
-        liquid_w_per_m_k, solid_w_per_m_k, density_kg_per_m3,
+        liquid_w_per_m_k,
+        solid_w_per_m_k,
+        density_kg_per_m3,
     )
 
 
@@ -55,8 +69,14 @@ def lump(
 
 
 def slab_bodies(
-    name: str, parent: int, first_link: Link | None, curve: EnthalpyCurve, area_m2: float,
-    edges_m: Sequence[float], starts_c: Sequence[float], first_body: int,
+    name: str,
+    parent: int,
+    first_link: Link | None,
+    curve: EnthalpyCurve,
+    area_m2: float,
+    edges_m: Sequence[float],
+    starts_c: Sequence[float],
+    first_body: int,
 ) -> list[Body]:
     """A chain of cells between given depths, the first hung on ``parent``."""
     bodies = []

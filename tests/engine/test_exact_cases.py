@@ -16,11 +16,29 @@ from scipy.special import erf, erfc
 
 from app.engine import build_network, march, passed_above
 from app.engine.histories import Constant, Day, Drift, Ramp, Series
-from app.engine.network import BODY_TEMPERATURE, MEAN, MELTED, SURFACE, Body, Boundary, CellLink, FilmLink, FixedLink
-from app.engine.network import SteadyFilmLink, Watch
+from app.engine.network import (
+    BODY_TEMPERATURE,
+    MEAN,
+    MELTED,
+    SURFACE,
+    Body,
+    Boundary,
+    CellLink,
+    FilmLink,
+    FixedLink,
+    SteadyFilmLink,
+    Watch,
+)
 from app.physics import FREEZING, LINEAR, EnthalpyCurve, FilmLaw, Segment
 from tests.engine.building import (
-    HOUR_S, at_hours, even_curve, lump, melting_curve, run_hours, slab_bodies, trace,
+    HOUR_S,
+    at_hours,
+    even_curve,
+    lump,
+    melting_curve,
+    run_hours,
+    slab_bodies,
+    trace,
 )
 
 CLOSE_K = 2e-3
@@ -45,14 +63,17 @@ def test_water_warms_melts_and_warms_as_three_closed_forms():
     # 100 kg, -25 to +8 °C, 5 W/K, 30 °C outside: m c/UA ln, m L/(UA dT), m c/UA ln
     network = build_network(
         [Body("ice", 0, None, melting_curve(2100.0, 4186.0, 334000.0), 100.0, -25.0, 0.001)],
-        [Boundary(0, 0, 5.0, "wall")], [Constant(30.0)],
+        [Boundary(0, 0, 5.0, "wall")],
+        [Constant(30.0)],
         [Watch("ice", BODY_TEMPERATURE, 0, 0), Watch("melted", MELTED, 0, 0)],
     )
     run = run_hours(network, 90)
     assert broken_h(run, 0, 8.0) * HOUR_S == pytest.approx(274090.54101422, abs=CLOSE_S)
     melted = trace(run, 1)
     assert passed_above(melted, 1e-6).broken_s == pytest.approx(25457.703749953, abs=CLOSE_S)
-    assert passed_above(melted, 1 - 1e-6).broken_s == pytest.approx(25457.703749953 + 222666.66666667, abs=CLOSE_S)
+    assert passed_above(melted, 1 - 1e-6).broken_s == pytest.approx(
+        25457.703749953 + 222666.66666667, abs=CLOSE_S
+    )
     # temperature stands still while it melts
     assert at_hours(run, 0, 30.0, 60.0) == pytest.approx([0.0, 0.0], abs=1e-9)
 
@@ -97,8 +118,12 @@ def test_drifting_room_is_the_outer_of_two_lumps():
 
 
 @pytest.mark.parametrize(
-    "outer", [Day(20.0, 6.0, peak_s=15 * HOUR_S, start_s=3 * HOUR_S), Ramp(10.0, 30.0, 6 * HOUR_S),
-              Series((0.0, 2 * HOUR_S, 9 * HOUR_S), (10.0, 25.0, 5.0))],
+    "outer",
+    [
+        Day(20.0, 6.0, peak_s=15 * HOUR_S, start_s=3 * HOUR_S),
+        Ramp(10.0, 30.0, 6 * HOUR_S),
+        Series((0.0, 2 * HOUR_S, 9 * HOUR_S), (10.0, 25.0, 5.0)),
+    ],
 )
 def test_drift_towards_any_history_solves_its_equation(outer):
     from app.engine.histories import pieces_of, temperature_c
@@ -114,9 +139,12 @@ def test_drift_towards_any_history_solves_its_equation(outer):
 
 def test_air_and_product():
     network = build_network(
-        [Body("air", 0, None, even_curve(5e4), 1.0, -20.0, 0.02),
-         Body("product", 0, FixedLink(60.0), even_curve(4e6), 1.0, -20.0, 0.001)],
-        [Boundary(0, 0, 20.0, "wall")], [Constant(30.0)],
+        [
+            Body("air", 0, None, even_curve(5e4), 1.0, -20.0, 0.02),
+            Body("product", 0, FixedLink(60.0), even_curve(4e6), 1.0, -20.0, 0.001),
+        ],
+        [Boundary(0, 0, 20.0, "wall")],
+        [Constant(30.0)],
         [Watch("air", BODY_TEMPERATURE, 0, 0), Watch("product", BODY_TEMPERATURE, 1, 1)],
     )
     run = run_hours(network, 30)
@@ -147,9 +175,20 @@ def test_many_bodies_follow_the_matrix_exponential():
             matrix[p, i] += links[i]
     start = rng.uniform(-30.0, 5.0, n)
     network = build_network(
-        [Body(f"b{i}", parents[i], FixedLink(links[i]) if i else None, even_curve(capacities[i]), 1.0, start[i], 0.001)
-         for i in range(n)],
-        [Boundary(i, 0, outside[i], "wall") for i in range(n)], [Constant(21.0)],
+        [
+            Body(
+                f"b{i}",
+                parents[i],
+                FixedLink(links[i]) if i else None,
+                even_curve(capacities[i]),
+                1.0,
+                start[i],
+                0.001,
+            )
+            for i in range(n)
+        ],
+        [Boundary(i, 0, outside[i], "wall") for i in range(n)],
+        [Constant(21.0)],
         [Watch(f"b{i}", BODY_TEMPERATURE, i, i) for i in range(n)],
     )
     run = run_hours(network, 24)
@@ -176,7 +215,9 @@ def wall_with_contents(k, rho, c, thickness, content, cells):
     content_body = Body("content", 0, None, even_curve(content), 1.0, -20.0, 0.001)
     wall = slab_bodies("wall", 0, SteadyFilmLink(1.0, 1e9, half), curve, 1.0, edges, starts, 1)
     return build_network(
-        [content_body, *wall], [Boundary(cells, 0, 1.0 / (half / k + 1.0 / 25.0), "wall")], [Constant(30.0)],
+        [content_body, *wall],
+        [Boundary(cells, 0, 1.0 / (half / k + 1.0 / 25.0), "wall")],
+        [Constant(30.0)],
         [Watch("content", BODY_TEMPERATURE, 0, 0)],
     )
 
@@ -207,12 +248,19 @@ def pallet(cells):
     curve = even_curve(2000.0, 1.4, 1000.0)
     edges = np.linspace(0.0, 0.6, cells + 1)
     half = 0.3 / cells
-    cell_bodies = slab_bodies("pallet", 0, SteadyFilmLink(1.0, 0.25, half), curve, 1.0, edges, [-20.0] * cells, 1)
+    cell_bodies = slab_bodies(
+        "pallet", 0, SteadyFilmLink(1.0, 0.25, half), curve, 1.0, edges, [-20.0] * cells, 1
+    )
     air = Body("air", 0, None, even_curve(1.0), 1e-3, 30.0, 0.02)
     return build_network(
-        [air, *cell_bodies], [Boundary(0, 0, 1e9, "room")], [Constant(30.0)],
-        [Watch("surface", SURFACE, 1, cells), Watch("mean", MEAN, 1, cells),
-         Watch("centre", BODY_TEMPERATURE, cells, cells)],
+        [air, *cell_bodies],
+        [Boundary(0, 0, 1e9, "room")],
+        [Constant(30.0)],
+        [
+            Watch("surface", SURFACE, 1, cells),
+            Watch("mean", MEAN, 1, cells),
+            Watch("centre", BODY_TEMPERATURE, cells, cells),
+        ],
     )
 
 
@@ -230,17 +278,24 @@ def test_pallet_behind_a_wall_has_its_surface_mean_and_centre():
 @pytest.mark.parametrize(
     ("biot", "exact", "error_percent"),
     # rows 3 and 10 of the table of decay rates of equal cells with a film (computed)
-    [(0.1, 0.3110528482, {3: -0.176, 10: -0.016}), (1.0, 0.860333589, {3: -1.176, 10: -0.107}),
-     (10.0, 1.428870011, {3: -2.206, 10: -0.2})],
+    [
+        (0.1, 0.3110528482, {3: -0.176, 10: -0.016}),
+        (1.0, 0.860333589, {3: -1.176, 10: -0.107}),
+        (10.0, 1.428870011, {3: -2.206, 10: -0.2}),
+    ],
 )
 def test_decay_rate_of_equal_cells_is_as_published_for_them(biot, exact, error_percent):
     for cells, percent in error_percent.items():
         curve = even_curve(1000.0, 1.0, 1000.0)
         edges = np.linspace(0.0, 1.0, cells + 1)
-        body = slab_bodies("slab", 0, SteadyFilmLink(1.0, biot, 0.5 / cells), curve, 1.0, edges, [-20.0] * cells, 1)
+        body = slab_bodies(
+            "slab", 0, SteadyFilmLink(1.0, biot, 0.5 / cells), curve, 1.0, edges, [-20.0] * cells, 1
+        )
         network = build_network(
-            [Body("air", 0, None, even_curve(1.0), 1e-3, 0.0, 0.02), *body], [Boundary(0, 0, 1e9, "room")],
-            [Constant(0.0)], [Watch("mean", MEAN, 1, cells)],
+            [Body("air", 0, None, even_curve(1.0), 1e-3, 0.0, 0.02), *body],
+            [Boundary(0, 0, 1e9, "room")],
+            [Constant(0.0)],
+            [Watch("mean", MEAN, 1, cells)],
         )
         times = np.array([2.0, 3.0]) * 1e6 * (1.0 if biot >= 1 else 6.0)
         run = march(network, times[1])
@@ -255,21 +310,28 @@ def test_film_that_goes_with_the_fourth_root_of_the_difference():
     law = FilmLaw(base=0.0, gain=math.sqrt(4.0 / 45.0**0.25), exponent=1.0 / 8.0, reference_c=0.0, per_k=0.0)
     body = Body("lump", 0, FilmLink(6.0, law, 0.0, 0.0), even_curve(2e5), 1.0, -20.0, 0.001)
     network = build_network(
-        [Body("air", 0, None, even_curve(1.0), 1e-3, 25.0, 0.02), body], [Boundary(0, 0, 1e9, "room")],
-        [Constant(25.0)], [Watch("lump", BODY_TEMPERATURE, 1, 1)],
+        [Body("air", 0, None, even_curve(1.0), 1e-3, 25.0, 0.02), body],
+        [Boundary(0, 0, 1e9, "room")],
+        [Constant(25.0)],
+        [Watch("lump", BODY_TEMPERATURE, 1, 1)],
     )
     run = run_hours(network, 14)
     assert at_hours(run, 0, 4, 12) == pytest.approx([14.29860383553, 23.380708713683], abs=CLOSE_K)
     assert broken_h(run, 0, 0.0) * HOUR_S == pytest.approx(5276.4061762756, abs=CLOSE_S)
 
 
-@pytest.mark.parametrize(("ice_kg", "end_c", "melted_kg"), [(5.0, 0.0, 2.6676646706587), (2.0, 4.1855372517792, 2.0)])
+@pytest.mark.parametrize(
+    ("ice_kg", "end_c", "melted_kg"), [(5.0, 0.0, 2.6676646706587), (2.0, 4.1855372517792, 2.0)]
+)
 def test_ice_in_a_closed_box_with_a_product(ice_kg, end_c, melted_kg):
     ice = melting_curve(2100.0, 4186.0, 334000.0)
     network = build_network(
-        [Body("product", 0, None, even_curve(3600.0), 20.0, 15.0, 0.001),
-         Body("ice", 0, FixedLink(50.0), ice, ice_kg, -18.0, 0.001)],
-        [Boundary(0, 0, 0.0, "wall")], [Constant(20.0)],
+        [
+            Body("product", 0, None, even_curve(3600.0), 20.0, 15.0, 0.001),
+            Body("ice", 0, FixedLink(50.0), ice, ice_kg, -18.0, 0.001),
+        ],
+        [Boundary(0, 0, 0.0, "wall")],
+        [Constant(20.0)],
         [Watch("product", BODY_TEMPERATURE, 0, 0), Watch("melted", MELTED, 1, 1)],
     )
     run = run_hours(network, 200)
@@ -282,11 +344,18 @@ def test_food_that_melts_over_a_range_takes_the_integral_of_its_curve():
     b, c = 3e5 * 1.7, 1900.0
     top = c * 38.3 + b * (1.0 / -40.0 + 1.0 / 1.7)
     curve = EnthalpyCurve(
-        (Segment(FREEZING, -40.0, -1.7, 0.0, top, c, b, 0.6, 0.0),
-         Segment(LINEAR, -1.7, 100.0, top, top + 3500.0 * 101.7, 3500.0)), 0.5, 1.5, 1000.0,
+        (
+            Segment(FREEZING, -40.0, -1.7, 0.0, top, c, b, 0.6, 0.0),
+            Segment(LINEAR, -1.7, 100.0, top, top + 3500.0 * 101.7, 3500.0),
+        ),
+        0.5,
+        1.5,
+        1000.0,
     )
     network = build_network(
-        [Body("food", 0, None, curve, 50.0, -22.0, 0.001)], [Boundary(0, 0, 4.0, "wall")], [Constant(25.0)],
+        [Body("food", 0, None, curve, 50.0, -22.0, 0.001)],
+        [Boundary(0, 0, 4.0, "wall")],
+        [Constant(25.0)],
         [Watch("food", BODY_TEMPERATURE, 0, 0)],
     )
     run = run_hours(network, 400)
@@ -309,8 +378,10 @@ def test_front_of_melting_moves_as_neumann_says(wall_c, start_c, front_m):
     first = SteadyFilmLink(1.0, 1e9, 0.5 * (edges[1] - edges[0]))
     body = slab_bodies("water", 0, first, curve, 1.0, edges, [start_c] * cells, 1)
     network = build_network(
-        [Body("face", 0, None, even_curve(1.0), 1e-3, wall_c, 0.02), *body], [Boundary(0, 0, 1e9, "face")],
-        [Constant(wall_c)], [Watch("melted", MELTED, 1, cells)],
+        [Body("face", 0, None, even_curve(1.0), 1e-3, wall_c, 0.02), *body],
+        [Boundary(0, 0, 1e9, "face")],
+        [Constant(wall_c)],
+        [Watch("melted", MELTED, 1, cells)],
     )
     run = run_hours(network, 24)
     solid = 1.0 - run.traces[-1, 0] if start_c < 0.0 else None
@@ -352,15 +423,18 @@ def test_thawing_of_tylose_slabs_with_one_melting_point():
     # Source: enthalpy finite-volume run of four slabs, all latent heat at -0.6 °C, centre to 0 °C (computed)
     curve = melting_curve(1.9e3, 3.71e3, 209e3, -0.6, 1.65, 0.55, 1000.0)
     for thickness, film, air_c, start_c, expected_h in [
-        (0.0525, 30.0, 13.0, -25.0, 7.3173), (0.026, 15.0, 40.0, -28.0, 1.8238),
+        (0.0525, 30.0, 13.0, -25.0, 7.3173),
+        (0.026, 15.0, 40.0, -28.0, 1.8238),
     ]:
         cells = 40
         edges = np.linspace(0.0, thickness / 2.0, cells + 1)
         link = SteadyFilmLink(1.0, film, 0.25 * thickness / cells)
         body = slab_bodies("slab", 0, link, curve, 1.0, edges, [start_c] * cells, 1)
         network = build_network(
-            [Body("air", 0, None, even_curve(1.0), 1e-3, air_c, 0.02), *body], [Boundary(0, 0, 1e9, "room")],
-            [Constant(air_c)], [Watch("centre", BODY_TEMPERATURE, cells, cells)],
+            [Body("air", 0, None, even_curve(1.0), 1e-3, air_c, 0.02), *body],
+            [Boundary(0, 0, 1e9, "room")],
+            [Constant(air_c)],
+            [Watch("centre", BODY_TEMPERATURE, cells, cells)],
         )
         assert broken_h(run_hours(network, 12), 0, 0.0) == pytest.approx(expected_h, rel=0.01)
 
@@ -368,8 +442,13 @@ def test_thawing_of_tylose_slabs_with_one_melting_point():
 def test_cell_link_is_half_of_each_in_series():
     curve_a, curve_b = even_curve(1e5, 0.5), even_curve(1e5, 2.0)
     network = build_network(
-        [Body("a", 0, None, curve_a, 1.0, 0.0, 0.001), Body("b", 0, CellLink(0.1, 0.2), curve_b, 1.0, 10.0, 0.001)],
-        [Boundary(0, 0, 0.0, "wall")], [Constant(0.0)], [Watch("b", BODY_TEMPERATURE, 1, 1)],
+        [
+            Body("a", 0, None, curve_a, 1.0, 0.0, 0.001),
+            Body("b", 0, CellLink(0.1, 0.2), curve_b, 1.0, 10.0, 0.001),
+        ],
+        [Boundary(0, 0, 0.0, "wall")],
+        [Constant(0.0)],
+        [Watch("b", BODY_TEMPERATURE, 1, 1)],
     )
     conductance = 1.0 / (0.1 / 2.0 + 0.2 / 0.5)
     run = march(network, 4 * HOUR_S)

@@ -1,0 +1,68 @@
+"""Whether and when each limit of an item, or of the air, is broken in a run.
+
+A preset becomes the limits that it stands for; every limit is then read from the trace of the point it is
+judged at. Called by ``hold_time``.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+
+from app.answers.answer import LimitAnswer, Status
+from app.engine import MeanKinetic, Passed, Trace, passed_above, passed_below
+from app.engine.network import COLDEST, MEAN, WARMEST
+from app.reference import limit_preset
+from app.stores import Limit
+from app.units import hours_from_seconds, seconds_from_hours
+
+_POINTS = {"warmest": WARMEST, "mean": MEAN, "coldest": COLDEST}
+
+_SAME_INSTANT_S = 1.0
+"""A limit that is broken within this time of the loss of power was broken at the start."""
+
+
+@dataclass(frozen=True)
+class PlainLimit:
+    """One limit in numbers. ``quantity`` says which trace it is judged on; ``text`` says it in words."""
+
+    kind: str
+    quantity: int
+    level: float
+    longer_than_h: float
+    window_h: float
+    activation_kj_per_mol: float
+    text: str
+    source: str | None
+
+
+def plain_limits(limit: Limit) -> tuple[PlainLimit, ...]:
+    """The limits in numbers that one limit of a definition means: a preset may mean several."""
+    if limit.kind != "preset":
+        return (_plain(limit, None),)
+    preset = limit_preset(limit.preset)
+    where = f"{preset.body}, {preset.document}, {preset.edition}".rstrip(", ")
+    return tuple(_plain(one, where) for one in preset.limits)
+
+
+def judged(limit: PlainLimit, trace_of: Callable[[int], Trace]) -> LimitAnswer:
+    """What becomes of one limit in a run; ``trace_of`` gives the trace of a quantity."""
+    passed = _passed(limit, trace_of(limit.quantity))
+    broken_h = None if passed.broken_s is None else hours_from_seconds(passed.broken_s)
+    first_h = None if passed.first_s is None else hours_from_seconds(passed.first_s)
+    status: Status = "fails"
+    if passed.broken_s is None:
+        status = "beyond_horizon"
+    elif passed.broken_s < _SAME_INSTANT_S:
+        status, broken_h, first_h = "already_past", 0.0, 0.0
+    return LimitAnswer(limit.text, status, broken_h, first_h, limit.source)
+
+
+def _passed(limit: PlainLimit, trace: Trace) -> Passed:
+    longer_s = seconds_from_hours(limit.longer_than_h)
+    if limit.kind == "below":
+        return passed_below(trace, limit.level, longer_s)
+    if limit.kind == "mean_kinetic":
+        mean = MeanKinetic(trace, seconds_from_hours(limit.window_h), limit.activation_kj_per_mol * 1000.0)
+        return mean.passed_above(limit.level)
+    return passed_above(trace, limit.level, longer_s)

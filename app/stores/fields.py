@@ -1,0 +1,135 @@
+"""What one field of a definition is: its words, unit and range, and how its number is known.
+
+``Ask`` sits on the pydantic field and drives the form, the API schema, the error text and the printed inputs:
+one field, one definition. ``Quantity`` is a number with how it is known.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Annotated, Any, Literal
+
+from pydantic import (
+    BaseModel,
+    ConfigDict,
+    Field,
+    GetCoreSchemaHandler,
+    GetJsonSchemaHandler,
+    model_serializer,
+    model_validator,
+)
+from pydantic_core import PydanticCustomError, core_schema
+
+from app.errors import allowed_range
+from app.units import celsius_from_fahrenheit
+
+Known = Literal["measured", "data_sheet", "estimated", "typical"]
+"""How a number is known; ``typical`` is the value of a kind of store, not of this one."""
+
+Number = Annotated[float, Field(strict=True, allow_inf_nan=False)]
+Whole = Annotated[int, Field(strict=True)]
+
+
+class Part(BaseModel):
+    """Base of every part of a definition: unknown fields are refused, nothing changes after reading."""
+
+    model_config = ConfigDict(extra="forbid", frozen=True, allow_inf_nan=False)
+
+
+class Quantity(Part):
+    """A number, given bare or with its spread or with how it is known."""
+
+    value: Number
+    plus_minus: Annotated[float, Field(strict=True, ge=0.0)] | None = None
+    known: Known | None = None
+
+    @model_validator(mode="before")
+    @classmethod
+    def _bare(cls, given: Any) -> Any:
+        if isinstance(given, (int, float)) and not isinstance(given, bool):
+            return {"value": float(given)}
+        return given
+
+    @model_serializer
+    def _short(self) -> Any:
+        if self.plus_minus is None and self.known is None:
+            return self.value
+        parts = {"value": self.value, "plus_minus": self.plus_minus, "known": self.known}
+        return {name: part for name, part in parts.items() if part is not None}
+
+
+@dataclass(frozen=True)
+class Ask:
+    """The words, unit and range of one field.
+
+    ``words`` is the unit in words for people who listen; ``hint`` helps to find the value.
+    """
+
+    label: str
+    unit: str = ""
+    words: str = ""
+    low: float | None = None
+    high: float | None = None
+    hint: str = ""
+
+    @property
+    def allowed(self) -> str:
+        """The range in words."""
+        return allowed_range(self.unit, self.low, self.high)
+
+    def __get_pydantic_core_schema__(
+        self, source: Any, handler: GetCoreSchemaHandler
+    ) -> core_schema.CoreSchema:
+        if self.low is None and self.high is None:
+            return handler(source)
+        return core_schema.no_info_after_validator_function(self._checked, handler(source))
+
+    def __get_pydantic_json_schema__(
+        self, schema: core_schema.CoreSchema, handler: GetJsonSchemaHandler
+    ) -> dict[str, Any]:
+        described: dict[str, Any] = dict(handler(schema))
+        words = f"{self.label}. {self.hint}".strip()
+        if self.low is not None or self.high is not None:
+            words += f" Allowed: {self.allowed}."
+        described["description"] = words
+        return described
+
+    def _checked(self, given: Any) -> Any:
+        number = given.value if isinstance(given, Quantity) else given
+        if number is None:
+            return given
+        if (self.low is not None and number < self.low) or (self.high is not None and number > self.high):
+            raise PydanticCustomError(
+                "out_of_range",
+                "{label} is {number}; it must be {allowed}.{slip}",
+                {
+                    "label": self.label,
+                    "number": f"{number:g}",
+                    "allowed": self.allowed,
+                    "slip": self._slip(number),
+                },
+            )
+        return given
+
+    def _fits(self, number: float) -> bool:
+        return (self.low is None or number >= self.low) and (self.high is None or number <= self.high)
+
+    def _slip(self, number: float) -> str:
+        """The unit that the person may have meant."""
+        for unit, factor, meant in _SLIPS:
+            if self.unit == unit and self._fits(number * factor):
+                return f" Did you enter {meant}?"
+        if self.unit == "°C" and self._fits(celsius_from_fahrenheit(number)):
+            return " Did you enter °F?"
+        return ""
+
+
+_SLIPS = (
+    ("m", 0.001, "mm"),
+    ("m", 0.01, "cm"),
+    ("kg", 0.001, "grams"),
+    ("", 0.01, "per cent"),
+    ("h", 1.0 / 60.0, "minutes"),
+    ("kWh/day", 0.001, "Wh"),
+    ("kWh/day", 1.0 / 365.0, "kWh per year"),
+)
