@@ -27,9 +27,7 @@ class InputOutOfRange(AppError):
 
     def __init__(self, name: str, value: float, unit: str, low: float | None, high: float | None) -> None:
         self.name, self.value, self.unit, self.low, self.high = name, value, unit, low, high
-        super().__init__(
-            f"{name} is {value:g} {unit}".rstrip() + f"; allowed: {allowed_range(unit, low, high)}."
-        )
+        super().__init__(f"{name} is {value:g} {unit}".rstrip() + f"; allowed: {allowed_range(unit, low, high)}.")
 
 
 def allowed_range(unit: str, low: float | None, high: float | None) -> str:

@@ -45,7 +45,7 @@ def _groups(case: _Case) -> set[str]:
     return {limit_preset(limit.preset).group for limit in limits if limit.kind == "preset"}
 
 
-def _best_estimate_only(case: _Case) -> Iterator[Caution]:
+def _best_estimate_only(_: _Case) -> Iterator[Caution]:
     yield Caution(
         "best_estimate_only",
         "This is a best estimate, not a planning value: how far the real store may lie on either side of it is not "
@@ -99,7 +99,7 @@ def _presets(case: _Case) -> Iterator[Caution]:
         yield Caution("preset_notice", STANDING_NOTICE)
 
 
-def _door(case: _Case) -> Iterator[Caution]:
+def _door(_: _Case) -> Iterator[Caution]:
     yield Caution(
         "door_shut",
         "The answer holds with the door shut. Openings are not counted: each one shortens the time.",

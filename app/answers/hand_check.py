@@ -63,9 +63,7 @@ def _mean_room_c(store: StoreNetwork, until_h: float) -> float:
     return float(np.mean(temperature_c(pieces_of(store.room), times)))
 
 
-def _heat_to(
-    curve: EnthalpyCurve, mass_kg: float, start_c: float, limit_c: float
-) -> tuple[np.ndarray, np.ndarray]:
+def _heat_to(curve: EnthalpyCurve, mass_kg: float, start_c: float, limit_c: float) -> tuple[np.ndarray, np.ndarray]:
     """Slices of the heat from the start to the limit: temperature and joules of each."""
     start, end = curve.enthalpy_j_per_kg(start_c), curve.enthalpy_j_per_kg(limit_c)
     if end <= start:

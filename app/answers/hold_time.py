@@ -26,7 +26,7 @@ from app.answers.answer import (
 )
 from app.answers.cautions import cautions_for
 from app.answers.hand_check import hand_check
-from app.answers.limits_kept import PlainLimit, judged, plain_limits
+from app.answers.limits_kept import USUAL_ACTIVATION_KJ_PER_MOL, PlainLimit, judged, plain_limits
 from app.engine import ENGINE_VERSION, MeanKinetic, Run, Trace, march, passed_above
 from app.engine.histories import pieces_of, temperature_c
 from app.engine.network import MEAN, MELTED, SOLID_LEFT, WARMEST
@@ -38,9 +38,6 @@ MELTING_STARTS_SHARE = 0.05
 
 MELTED_SHARE = 0.999
 
-USUAL_ACTIVATION_KJ_PER_MOL = 83.144
-"""Of the mean kinetic temperature (USP <1160>)."""
-
 
 @dataclass(frozen=True)
 class _Judged:
@@ -50,9 +47,7 @@ class _Judged:
     answer: LimitAnswer
 
 
-def hold_time(
-    definition: StoreDefinition, *, confidence: float = 0.9, series_step_min: float = 15.0
-) -> Answer:
+def hold_time(definition: StoreDefinition, *, confidence: float = 0.9, series_step_min: float = 15.0) -> Answer:
     """The best estimate of how long a store keeps its limits, with the evidence behind it.
 
     ``confidence`` is part of the question's fingerprint; until the spread is worked out no quantile is given.
@@ -174,8 +169,7 @@ def _series(store: StoreNetwork, run: Run, step_s: float) -> Series:
         time_h=tuple(hours_from_seconds(float(time)) for time in times),
         air_c=values(store.air_column),
         items={
-            item.name: ItemSeries(values(item.columns[MEAN]), values(item.columns[WARMEST]))
-            for item in store.items
+            item.name: ItemSeries(values(item.columns[MEAN]), values(item.columns[WARMEST])) for item in store.items
         },
         coolants={coolant.name: values(coolant.columns[MEAN]) for coolant in store.coolants},
         room_c=tuple(float(value) for value in temperature_c(pieces_of(store.room), times)),

@@ -11,12 +11,15 @@ from dataclasses import dataclass
 
 from app.answers.answer import LimitAnswer, Status
 from app.engine import MeanKinetic, Passed, Trace, passed_above, passed_below
-from app.engine.network import COLDEST, MEAN, WARMEST
-from app.reference import limit_preset
+from app.engine.network import COLDEST, MEAN, MELTED, WARMEST
+from app.reference import PresetLimit, limit_preset
 from app.stores import Limit
 from app.units import hours_from_seconds, seconds_from_hours
 
 _POINTS = {"warmest": WARMEST, "mean": MEAN, "coldest": COLDEST}
+
+USUAL_ACTIVATION_KJ_PER_MOL = 83.144
+"""Of the mean kinetic temperature (USP <1160>)."""
 
 _SAME_INSTANT_S = 1.0
 """A limit that is broken within this time of the loss of power was broken at the start."""
@@ -43,6 +46,29 @@ def plain_limits(limit: Limit) -> tuple[PlainLimit, ...]:
     preset = limit_preset(limit.preset)
     where = f"{preset.body}, {preset.document}, {preset.edition}".rstrip(", ")
     return tuple(_plain(one, where) for one in preset.limits)
+
+
+def _plain(limit: Limit | PresetLimit, source: str | None) -> PlainLimit:
+    """One limit in numbers and words; a preset's rows have the same names as a definition's own limits."""
+    if limit.kind == "thawed":
+        text = f"more than {100.0 * limit.share:g} % of the ice melted"
+        return PlainLimit("thawed", MELTED, limit.share, 0.0, 0.0, 0.0, text, source)
+    longer_h = getattr(limit, "longer_than_h", 0.0)
+    text = f"{limit.kind.replace('_', ' ')} {limit.temperature_c:g} °C"
+    if limit.kind == "mean_kinetic":
+        text = f"mean kinetic temperature over {limit.window_h:g} h above {limit.temperature_c:g} °C"
+    if longer_h > 0.0:
+        text += f" for longer than {longer_h:g} h"
+    return PlainLimit(
+        kind=limit.kind,
+        quantity=_POINTS[limit.at],
+        level=limit.temperature_c,
+        longer_than_h=longer_h,
+        window_h=getattr(limit, "window_h", 0.0),
+        activation_kj_per_mol=getattr(limit, "activation_kj_per_mol", USUAL_ACTIVATION_KJ_PER_MOL),
+        text=f"{text}, {limit.at} point",
+        source=source,
+    )
 
 
 def judged(limit: PlainLimit, trace_of: Callable[[int], Trace]) -> LimitAnswer:

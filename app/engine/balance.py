@@ -22,9 +22,7 @@ from app.physics import (
 STAGE = 0
 """First of the six rows of stages: heat flows before a stage is solved, changes of enthalpy after. [W, J]"""
 
-ENERGY, NEW, AT, START_W, START_SLOPE, PUSHED, OWN, FROM_PARENT, DIAGONAL, INVERSE, LIFT, THIRD, FOURTH = (
-    range(6, 19)
-)
+ENERGY, NEW, AT, START_W, START_SLOPE, PUSHED, OWN, FROM_PARENT, DIAGONAL, INVERSE, LIFT, THIRD, FOURTH = range(6, 19)
 """Enthalpies [J], flows [W], temperature slopes [K/J], derivatives and pivots [1/s, s], continuation [J]."""
 
 TEMPERATURE, RESISTIVITY, SLOPE, RESISTIVITY_SLOPE = range(19, 23)

@@ -123,9 +123,7 @@ class MeanKinetic:
 
     def _rate(self, temperature_c: Floats) -> Floats:
         """Rate of the reaction against that at the start."""
-        rates: Floats = np.exp(
-            self.over_k * (1.0 / self.reference_k - 1.0 / (temperature_c + ZERO_CELSIUS_K))
-        )
+        rates: Floats = np.exp(self.over_k * (1.0 / self.reference_k - 1.0 / (temperature_c + ZERO_CELSIUS_K)))
         return rates
 
 

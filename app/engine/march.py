@@ -90,9 +90,7 @@ def march(network: Network, horizon_s: float, precision: Precision | None = None
     return Run(trace[:, 0], trace[:, 1:], energies_j, path_j, path_start_w, closure, steps, refused)
 
 
-def march_many(
-    networks: Sequence[Network], horizon_s: float, precision: Precision | None = None
-) -> list[Run]:
+def march_many(networks: Sequence[Network], horizon_s: float, precision: Precision | None = None) -> list[Run]:
     """Run many networks, each with its own steps, on all cores; one run per network, in order.
 
     The compiled loop releases the interpreter lock, so plain threads share the work.

@@ -66,9 +66,7 @@ SEGMENT = np.dtype(
         ("end_tolerance_j", np.float64),
     ]
 )
-BOUNDARY = np.dtype(
-    [("body", np.int64), ("drive", np.int64), ("conductance_w_per_k", np.float64), ("path", np.int64)]
-)
+BOUNDARY = np.dtype([("body", np.int64), ("drive", np.int64), ("conductance_w_per_k", np.float64), ("path", np.int64)])
 WATCH = np.dtype(
     [
         ("quantity", np.int64),
@@ -248,9 +246,7 @@ class _Tables:
             raise ValueError(f"{body.name}: a parent must come before its children")
         first, count = self.curve_rows(body.curve, body.mass_kg)
         start = body.curve.enthalpy_j_per_kg(body.start_c)
-        capacity = min(
-            s.capacity_j_per_kg_k for s in body.curve.segments if math.isfinite(s.capacity_j_per_kg_k)
-        )
+        capacity = min(s.capacity_j_per_kg_k for s in body.curve.segments if math.isfinite(s.capacity_j_per_kg_k))
         return (
             body.parent,
             *_link_columns(body.link),
@@ -272,8 +268,7 @@ class _Tables:
         mass_kg = sum(body.mass_kg for body in item)
         first, count = self.curve_rows(item[0].curve, mass_kg) if watch.quantity == MEAN else (0, 0)
         start_ice = [
-            body.curve.ice_kg_per_kg(body.curve.enthalpy_j_per_kg(body.start_c)) * body.mass_kg
-            for body in item
+            body.curve.ice_kg_per_kg(body.curve.enthalpy_j_per_kg(body.start_c)) * body.mass_kg for body in item
         ]
         full = mass_kg * (item[0].curve.ice_full or 1.0)
         return (watch.quantity, watch.first_body, watch.last_body, first, count, sum(start_ice) / full)

@@ -82,9 +82,7 @@ def march_one(
             next_stop += 1
         end = min(horizon_s, stops_s[next_stop]) if next_stop < stops_s.shape[0] else horizon_s
         _choose_pieces(pieces, piece_starts, piece, time)
-        _begin_step(
-            bodies, segments, boundaries, pieces, piece_starts, piece, locked, rows, drives, path_w, time
-        )
+        _begin_step(bodies, segments, boundaries, pieces, piece_starts, piece, locked, rows, drives, path_w, time)
         if steps == 0:
             for p in range(n_paths):
                 path_start_w[p] = path_w[0, p]
@@ -134,7 +132,7 @@ def march_one(
             trace[points, 0] = time + (part + 1) / TRACED_POINTS * h
             watched_values(bodies, segments, watches, locked, rows, AT, trace, points)
             points += 1
-        _add_path_heat(boundaries, drives, rows, path_w, path_j, h)
+        _add_path_heat(boundaries, rows, path_w, path_j, h)
         moved_j += _accept(bodies, segments, locked, rows)
         steps += 1
         growth = min(_GROWTH_LIMIT, max(_SHRINK_LIMIT, _SAFETY * max(error, 1e-8) ** -0.25))
@@ -164,9 +162,7 @@ def _choose_pieces(pieces, piece_starts, piece, time):
 
 
 @compiled
-def _begin_step(
-    bodies, segments, boundaries, pieces, piece_starts, piece, locked, rows, drives, path_w, time
-):
+def _begin_step(bodies, segments, boundaries, pieces, piece_starts, piece, locked, rows, drives, path_w, time):
     """Read the balance and its derivatives at the start of a step, on the segments and pieces then valid."""
     drive_temperatures(pieces, piece_starts, piece, time, drives[0], drives[1])
     read_states(bodies, segments, locked, rows, ENERGY)
@@ -291,7 +287,7 @@ def _share_at(rows, i, target_j):
 
 
 @compiled
-def _add_path_heat(boundaries, drives, rows, path_w, path_j, h):
+def _add_path_heat(boundaries, rows, path_w, path_j, h):
     """Heat that came in by each path during the step, by the same stages as the bodies' heat."""
     n_paths = path_j.shape[0]
     heat_j = np.zeros((STAGES, n_paths))

@@ -42,9 +42,7 @@ _FILM = Ask(
     10000.0,
     "Convection and radiation together, held constant.",
 )
-_U_VALUE = Ask(
-    "U-value", "W/m²·K", "watts per square metre and kelvin", 0.01, 10.0, "Air to air, films included."
-)
+_U_VALUE = Ask("U-value", "W/m²·K", "watts per square metre and kelvin", 0.01, 10.0, "Air to air, films included.")
 _MASS = Ask("Mass", "kg", "kilograms", 0.001, 1_000_000.0)
 
 
@@ -91,8 +89,7 @@ def _beyond_kind(given: Any) -> str:
 
 
 Beyond = Annotated[
-    Annotated[Literal["room", "outdoors", "ground"], Tag("tag:named")]
-    | Annotated[FixedTemperature, Tag("tag:fixed")],
+    Annotated[Literal["room", "outdoors", "ground"], Tag("tag:named")] | Annotated[FixedTemperature, Tag("tag:fixed")],
     Discriminator(_beyond_kind),
 ]
 
@@ -100,9 +97,7 @@ Beyond = Annotated[
 class Face(Part):
     """Walls, ceiling or floor: layers from outside to inside, or a U-value."""
 
-    layers: Annotated[
-        tuple[Layer, ...] | None, Ask("Layers, from outside to inside"), Field(max_length=12)
-    ] = None
+    layers: Annotated[tuple[Layer, ...] | None, Ask("Layers, from outside to inside"), Field(max_length=12)] = None
     u_w_per_m2_k: Annotated[Quantity | None, _U_VALUE] = None
     films_w_per_m2_k: Annotated[Films | None, Ask("Films")] = None
     beyond: Annotated[Beyond, Ask("What lies beyond")] = "room"
@@ -133,22 +128,16 @@ class HeatLeak(_OverallPart):
 class KValue(_OverallPart):
     """The whole store by its K-value on the mean area."""
 
-    k_w_per_m2_k: Annotated[
-        Quantity, Ask("K-value", "W/m²·K", "watts per square metre and kelvin", 0.02, 10.0)
-    ]
+    k_w_per_m2_k: Annotated[Quantity, Ask("K-value", "W/m²·K", "watts per square metre and kelvin", 0.02, 10.0)]
 
 
 class EnergyUse(_OverallPart):
     """The whole store by the energy that its appliance uses."""
 
-    energy_kwh_per_day: Annotated[
-        Quantity, Ask("Energy use", "kWh/day", "kilowatt-hours per day", 0.01, 500.0)
-    ]
+    energy_kwh_per_day: Annotated[Quantity, Ask("Energy use", "kWh/day", "kilowatt-hours per day", 0.01, 500.0)]
     at_room_c: Annotated[Quantity, _temperature("Room in the energy test", 0.0, 50.0)]
     inside_c: Annotated[Quantity, _temperature("Inside in the energy test", -95.0, 20.0)]
-    cop: Annotated[
-        Quantity, Ask("Coefficient of performance", "", "", 0.2, 8.0, "Cold made per energy used.")
-    ]
+    cop: Annotated[Quantity, Ask("Coefficient of performance", "", "", 0.2, 8.0, "Cold made per energy used.")]
 
 
 class RiseTime(_OverallPart):
@@ -224,9 +213,7 @@ class Enclosure(Part):
     faces: Annotated[Faces | None, Ask("Faces")] = None
     overall: Annotated[Overall | None, Ask("Overall figure")] = None
     openings: Annotated[tuple[Opening, ...], Ask("Openings"), Field(max_length=20)] = ()
-    bridges_w_per_k: Annotated[
-        Quantity | None, Ask("Thermal bridges", "W/K", "watts per kelvin", 0.0, 10000.0)
-    ] = None
+    bridges_w_per_k: Annotated[Quantity | None, Ask("Thermal bridges", "W/K", "watts per kelvin", 0.0, 10000.0)] = None
     fittings: Annotated[tuple[Fitting, ...], Ask("Fittings"), Field(max_length=40)] = ()
     edge_factors: Annotated[bool, Ask("Count edges and corners"), Field(strict=True)] = True
 
@@ -345,9 +332,7 @@ class Exposed(Part):
     half_thickness_m: Annotated[Quantity, _length("Depth behind the surface", 0.0005, 5.0)]
 
 
-Stacking = Annotated[
-    Packs | Cartons | Pallet | Carcass | Bottles | Bulk | Exposed, Field(discriminator="kind")
-]
+Stacking = Annotated[Packs | Cartons | Pallet | Carcass | Bottles | Bulk | Exposed, Field(discriminator="kind")]
 
 
 class Packaging(Part):
@@ -392,9 +377,9 @@ class MeanKineticLimit(Part):
     kind: Literal["mean_kinetic"]
     temperature_c: Annotated[Number, _temperature("Mean kinetic temperature not above")]
     window_h: Annotated[Number, _hours("Window", 0.1, 8760.0)] = 24.0
-    activation_kj_per_mol: Annotated[
-        Number, Ask("Activation energy", "kJ/mol", "kilojoules per mole", 10, 500)
-    ] = 83.144
+    activation_kj_per_mol: Annotated[Number, Ask("Activation energy", "kJ/mol", "kilojoules per mole", 10, 500)] = (
+        83.144
+    )
     at: Annotated[Point, Ask("Judged at")] = "warmest"
 
 
@@ -441,9 +426,7 @@ class Contents(Part):
     substance: Annotated[Substance | None, Ask("Substance")] = None
     freezing_c: Annotated[Quantity | None, _temperature("Freezing point", -38.0, 0.0)] = None
     mass_kg: Annotated[Quantity, _MASS]
-    start_c: Annotated[
-        Quantity, _temperature("Temperature at the start", hint="What was held, not the set point.")
-    ]
+    start_c: Annotated[Quantity, _temperature("Temperature at the start", hint="What was held, not the set point.")]
     stacking: Annotated[Stacking, Ask("How it stands")]
     packaging: Annotated[tuple[Packaging, ...], Ask("Packaging"), Field(max_length=10)] = ()
     film_w_per_m2_k: Annotated[Quantity | None, _FILM] = None
@@ -461,9 +444,7 @@ class Coolant(Part):
     area_m2: Annotated[Quantity | None, Ask("Area in the air", "m²", "square metres", 0.0001, 10000.0)] = None
     film_w_per_m2_k: Annotated[Quantity | None, _FILM] = None
     added_at_h: Annotated[Number, _hours("Added at")] = 0.0
-    wrapping_w_per_k: Annotated[
-        Quantity | None, Ask("Wrapping", "W/K", "watts per kelvin", 0.001, 1000.0)
-    ] = None
+    wrapping_w_per_k: Annotated[Quantity | None, Ask("Wrapping", "W/K", "watts per kelvin", 0.001, 1000.0)] = None
 
 
 class _History(Part):
@@ -511,9 +492,7 @@ class SeriesHistory(_History):
     temperature_c: Annotated[tuple[Number, ...], Ask("Temperatures"), Field(min_length=2, max_length=20000)]
 
 
-SteadyHistory = Annotated[
-    ConstantHistory | RampHistory | DayHistory | SeriesHistory, Field(discriminator="kind")
-]
+SteadyHistory = Annotated[ConstantHistory | RampHistory | DayHistory | SeriesHistory, Field(discriminator="kind")]
 
 
 class DriftHistory(_History):

@@ -77,9 +77,7 @@ class Ask:
         """The range in words."""
         return allowed_range(self.unit, self.low, self.high)
 
-    def __get_pydantic_core_schema__(
-        self, source: Any, handler: GetCoreSchemaHandler
-    ) -> core_schema.CoreSchema:
+    def __get_pydantic_core_schema__(self, source: Any, handler: GetCoreSchemaHandler) -> core_schema.CoreSchema:
         if self.low is None and self.high is None:
             return handler(source)
         return core_schema.no_info_after_validator_function(self._checked, handler(source))

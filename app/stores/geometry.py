@@ -73,8 +73,7 @@ class Block:
         edges_m = self.half_thickness_m * _graded(count)
         within = [float(np.interp(edge, depths.depth_m, depths.outside_m3)) for edge in edges_m]
         nodes_m = [
-            float(np.interp(0.5 * (within[j] + within[j + 1]), depths.outside_m3, depths.depth_m))
-            for j in range(count)
+            float(np.interp(0.5 * (within[j] + within[j + 1]), depths.outside_m3, depths.depth_m)) for j in range(count)
         ]
         paths = [float(np.interp(depth, depths.depth_m, depths.path_per_m)) for depth in [*nodes_m, *edges_m]]
         node_path, edge_path = paths[:count], paths[count:]
@@ -161,9 +160,7 @@ def slab_block(area_m2: float, half_thickness_m: float, *, height_m: float) -> B
     return Block(1, half_thickness_m, height_m, lambda _: area_m2, area_m2 * half_thickness_m)
 
 
-def near_cubic_stack(
-    count: int, width_m: float, depth_m: float, height_m: float
-) -> tuple[float, float, float]:
+def near_cubic_stack(count: int, width_m: float, depth_m: float, height_m: float) -> tuple[float, float, float]:
     """Sides of the most compact stack of ``count`` equal boxes laid side by side. [m]
 
     Counts that make no full stack are spread evenly: the stack keeps the volume of its boxes.

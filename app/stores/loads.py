@@ -8,7 +8,7 @@ and undersides together and on the warm side of them. Called by ``network_of``.
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from app.engine.network import Body, CellLink, FilmLink, Link, SteadyFilmLink
 from app.physics import EnthalpyCurve
@@ -68,7 +68,7 @@ class Load:
 def contents_load(contents: Contents, start_c: float, first_body: int, usual_air_c: float) -> Load:
     """One item of the contents. ``usual_air_c`` is the air temperature around which its film is laid out."""
     curve = contents_curve(contents)
-    block = contents_block(contents, curve)
+    block = contents_block(contents)
     mass_kg = contents.mass_kg.value
     packed = curve.with_capacity(_packaging_j_per_k(contents.packaging) / mass_kg)
     share = mass_kg / curve.density_kg_per_m3 / block.volume_m3
@@ -115,7 +115,7 @@ def coolant_load(coolant: Coolant, start_c: float, first_body: int, usual_air_c:
     )
 
 
-def fitting_load(fitting: Fitting, start_c: float, first_body: int) -> Load:
+def fitting_load(fitting: Fitting, start_c: float) -> Load:
     """Racks, liners and the like: bare sheet with air on both sides."""
     known = material(fitting.material)
     mass_kg = fitting.mass_kg.value
@@ -181,7 +181,7 @@ def _substance_curve(contents: Contents) -> EnthalpyCurve:
     )
 
 
-def contents_block(contents: Contents, curve: EnthalpyCurve) -> Block:
+def contents_block(contents: Contents) -> Block:
     """How the contents stand in the air, by their stacking."""
     stacking = contents.stacking
     if stacking.kind == "exposed":
@@ -224,7 +224,7 @@ def _load(
 ) -> Load:
     liquid = block_conductivity_w_per_m_k(solid_w_per_m_k=curve.conductivity_liquid_w_per_m_k, filled=filled)
     solid = block_conductivity_w_per_m_k(solid_w_per_m_k=curve.conductivity_solid_w_per_m_k, filled=filled)
-    stacked = EnthalpyCurve(curve.segments, liquid, solid, curve.density_kg_per_m3)
+    stacked = replace(curve, conductivity_liquid_w_per_m_k=liquid, conductivity_solid_w_per_m_k=solid)
     film = given_film or _still_air_film_w_per_m2_k(block.height_m, usual_air_c)
     biot = film * block.volume_m3 / block.area_m2 / min(liquid, solid)
     shells = block.shells(shell_count(biot))
@@ -250,9 +250,7 @@ def shell_count(biot: float) -> int:
     return next(count for limit, count in _SHELLS if biot <= limit)
 
 
-def _link(
-    shells: tuple[Shell, ...], j: int, block: Block, given_film: float | None, usual_air_c: float
-) -> Link:
+def _link(shells: tuple[Shell, ...], j: int, block: Block, given_film: float | None, usual_air_c: float) -> Link:
     if j > 0:
         return CellLink(near_path_per_m=shells[j].outward_per_m, far_path_per_m=shells[j - 1].inward_per_m)
     if given_film is not None:

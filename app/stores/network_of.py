@@ -185,9 +185,7 @@ class _Parts:
         if given is not None:
             return given.value
         coldest = min(contents.start_c.value for contents in self.definition.contents)
-        self.assumed.append(
-            Assumption("start.air_c", coldest, "the coldest start temperature of the contents")
-        )
+        self.assumed.append(Assumption("start.air_c", coldest, "the coldest start temperature of the contents"))
         return coldest
 
     def add_boundary(self, path: str, body: int, history: int, conductance_w_per_k: float) -> None:
@@ -211,9 +209,7 @@ class _Parts:
         if opening.u_w_per_m2_k is not None:
             return opening.u_w_per_m2_k.value
         usual = opening_kind("solid_swing_door")
-        self.assumed.append(
-            Assumption(f"enclosure.openings[{k}].u_w_per_m2_k", usual.u_w_per_m2_k, usual.source_text)
-        )
+        self.assumed.append(Assumption(f"enclosure.openings[{k}].u_w_per_m2_k", usual.u_w_per_m2_k, usual.source_text))
         return usual.u_w_per_m2_k
 
     def _seal_leak_m3_per_h(self, k: int, opening: Opening) -> float:
@@ -222,9 +218,7 @@ class _Parts:
         usual = opening_kind("solid_swing_door")
         gasket_m = 2.0 * (opening.width_m.value + opening.height_m.value)
         leak = usual.leak_l_per_s_m / 1000.0 * seconds_from_hours(1.0) * gasket_m
-        self.assumed.append(
-            Assumption(f"enclosure.openings[{k}].seal_leak_m3_per_h", leak, usual.source_text)
-        )
+        self.assumed.append(Assumption(f"enclosure.openings[{k}].seal_leak_m3_per_h", leak, usual.source_text))
         return leak
 
     def add_bridges(self) -> None:
@@ -308,7 +302,7 @@ class _Parts:
 
     def add_fitting(self, fitting: Fitting) -> None:
         """Racks and liners, which warm with the air."""
-        load = fitting_load(fitting, self.air_c, len(self.bodies))
+        load = fitting_load(fitting, self.air_c)
         self.bodies += load.bodies
         self.fittings_j_per_k += load.mass_kg * load.curve.segments[0].capacity_j_per_kg_k
 
@@ -327,15 +321,11 @@ class _Parts:
         load = coolant_load(coolant, start_c, len(self.bodies), self._usual_air_c())
         if coolant.area_m2 is None:
             self.assumed.append(
-                Assumption(
-                    f"coolants[{k}].area_m2", load.area_m2, "flat packs 30 mm thick, air on both sides"
-                )
+                Assumption(f"coolants[{k}].area_m2", load.area_m2, "flat packs 30 mm thick, air on both sides")
             )
         return self._place(coolant.name, load, (MEAN, SOLID_LEFT, MELTED), ())
 
-    def _place(
-        self, name: str, load: Load, quantities: tuple[int, ...], limits: tuple[Limit, ...]
-    ) -> PlacedItem:
+    def _place(self, name: str, load: Load, quantities: tuple[int, ...], limits: tuple[Limit, ...]) -> PlacedItem:
         first, last = len(self.bodies), len(self.bodies) + len(load.bodies) - 1
         columns = {quantity: len(self.watches) + j for j, quantity in enumerate(quantities)}
         self.watches += [Watch(f"{name}, {quantity}", quantity, first, last) for quantity in quantities]

@@ -16,9 +16,7 @@ USUAL_WALL_THICKNESS_M = 0.06
 """Wall of an appliance whose thickness was not given (common practice: 40 to 80 mm)."""
 
 
-def overall_heat_leak_w_per_k(
-    enclosure: Enclosure, sizes: dict[str, FaceSize], other_w_per_k: float
-) -> float:
+def overall_heat_leak_w_per_k(enclosure: Enclosure, sizes: dict[str, FaceSize], other_w_per_k: float) -> float:
     """Conductance from the inside air to the room that the given figure means. [W/K]
 
     A figure for the whole store counts doors, bridges and seals too; what is given for them besides,

@@ -147,9 +147,7 @@ def _without_echoes(faults: list[FieldFault]) -> list[FieldFault]:
     return [
         fault
         for fault in faults
-        if not (
-            "should have at least" in fault.message and any(p.startswith(fault.field + "[") for p in paths)
-        )
+        if not ("should have at least" in fault.message and any(p.startswith(fault.field + "[") for p in paths))
     ]
 
 

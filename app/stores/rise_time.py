@@ -32,9 +32,7 @@ def store_network(definition: StoreDefinition) -> StoreNetwork:
     overall = definition.enclosure.overall
     if not isinstance(overall, RiseTime):
         return network_of(definition)
-    return network_of(
-        _with_heat_leak(definition, overall, heat_leak_of_rise_time_w_per_k(definition, overall))
-    )
+    return network_of(_with_heat_leak(definition, overall, heat_leak_of_rise_time_w_per_k(definition, overall)))
 
 
 def heat_leak_of_rise_time_w_per_k(definition: StoreDefinition, overall: RiseTime) -> float:

@@ -31,9 +31,7 @@ def store_types() -> tuple[StoreType, ...]:
     for path in sorted(_FOLDER.glob("*.json")):
         document = json.loads(path.read_text(encoding="utf-8"))
         key = path.stem.split("-", 1)[1]
-        types.append(
-            StoreType(key, document["label"], document["about"], document["source"], document["store"])
-        )
+        types.append(StoreType(key, document["label"], document["about"], document["source"], document["store"]))
     return tuple(types)
 
 

@@ -36,9 +36,7 @@ def _ways(definition: StoreDefinition) -> Faults:
     """Exactly one way of giving each thing."""
     enclosure = definition.enclosure
     if (enclosure.faces is None) == (enclosure.overall is None):
-        yield FieldFault(
-            "enclosure.faces", "Give either the faces or one overall figure.", None, "one of the two"
-        )
+        yield FieldFault("enclosure.faces", "Give either the faces or one overall figure.", None, "one of the two")
     is_round = hasattr(enclosure.inside_m, "diameter")
     if is_round != (enclosure.shape == "cylinder"):
         wanted = "diameter and height" if enclosure.shape == "cylinder" else "width, depth and height"
@@ -71,9 +69,7 @@ def _face_ways(path: str, face: Face, definition: StoreDefinition) -> Faults:
         if layer.material is not None:
             yield from _known(f"{path}.layers[{j}].material", material, layer.material)
     if face.beyond == "outdoors" and definition.surroundings.outdoors is None:
-        yield FieldFault(
-            f"{path}.beyond", "Give surroundings.outdoors for a face outdoors.", "outdoors", "room"
-        )
+        yield FieldFault(f"{path}.beyond", "Give surroundings.outdoors for a face outdoors.", "outdoors", "room")
     if face.beyond == "ground":
         yield _not_yet(f"{path}.beyond", "A floor on the ground", "ground")
 
@@ -276,9 +272,7 @@ def _series(path: str, series: SeriesHistory) -> Faults:
     if any(b <= a for a, b in zip(series.time_h[:-1], series.time_h[1:], strict=True)):
         yield FieldFault(f"{path}.time_h", "Times must rise.", None, "rising values")
     if series.time_h[0] < 0.0:
-        yield FieldFault(
-            f"{path}.time_h", "Times count from the loss of power.", series.time_h[0], "0 or later"
-        )
+        yield FieldFault(f"{path}.time_h", "Times count from the loss of power.", series.time_h[0], "0 or later")
     if not all(-90.0 <= value <= 90.0 for value in series.temperature_c):
         yield FieldFault(f"{path}.temperature_c", "Temperatures are out of range.", None, "-90 to 90 °C")
 
@@ -297,13 +291,9 @@ def _later(definition: StoreDefinition) -> Faults:
             yield _not_yet(f"contents[{k}].place", "Warmer and colder places in the store", contents.place)
     for k, coolant in enumerate(definition.coolants):
         if coolant.added_at_h > 0.0:
-            yield _not_yet(
-                f"coolants[{k}].added_at_h", "A coolant added during the outage", coolant.added_at_h
-            )
+            yield _not_yet(f"coolants[{k}].added_at_h", "A coolant added during the outage", coolant.added_at_h)
         if coolant.wrapping_w_per_k is not None:
-            yield _not_yet(
-                f"coolants[{k}].wrapping_w_per_k", "Wrapping of a coolant", coolant.wrapping_w_per_k.value
-            )
+            yield _not_yet(f"coolants[{k}].wrapping_w_per_k", "Wrapping of a coolant", coolant.wrapping_w_per_k.value)
     for path, limit in _limits(definition):
         if limit.kind == "growth":
             yield _not_yet(f"{path}.kind", "Growth of organisms", "growth")

@@ -87,9 +87,7 @@ class Baseline:
             rise = np.abs(other[film] - own[film]) ** np.where(f["is_sixth"] > 0.0, 1.0 / 6.0, 1.0 / 8.0)
             warmth = 1.0 - f["per_k"] * (0.5 * (own[film] + other[film]) - f["reference_c"])
             convection = (f["base"] + f["gain"] * rise) ** 2 * warmth
-            radiation = (
-                STEFAN_BOLTZMANN_W_PER_M2_K4 * f["emissivity"] * (own_k**2 + other_k**2) * (own_k + other_k)
-            )
+            radiation = STEFAN_BOLTZMANN_W_PER_M2_K4 * f["emissivity"] * (own_k**2 + other_k**2) * (own_k + other_k)
             conductance[film] = 1.0 / (1.0 / (f["area_m2"] * (convection + radiation)) + path[film])
         flow = conductance * (other - own)
         rate = np.zeros(self.n)

@@ -56,9 +56,7 @@ def melting_curve(
     )
 
 
-def lump(
-    capacity_j_per_k: float, conductance_w_per_k: float, start_c: float, surroundings: History
-) -> Network:
+def lump(capacity_j_per_k: float, conductance_w_per_k: float, start_c: float, surroundings: History) -> Network:
     """One body joined to one surroundings."""
     return build_network(
         [Body("lump", 0, None, even_curve(capacity_j_per_k), 1.0, start_c, 0.001)],

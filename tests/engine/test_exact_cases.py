@@ -71,9 +71,7 @@ def test_water_warms_melts_and_warms_as_three_closed_forms():
     assert broken_h(run, 0, 8.0) * HOUR_S == pytest.approx(274090.54101422, abs=CLOSE_S)
     melted = trace(run, 1)
     assert passed_above(melted, 1e-6).broken_s == pytest.approx(25457.703749953, abs=CLOSE_S)
-    assert passed_above(melted, 1 - 1e-6).broken_s == pytest.approx(
-        25457.703749953 + 222666.66666667, abs=CLOSE_S
-    )
+    assert passed_above(melted, 1 - 1e-6).broken_s == pytest.approx(25457.703749953 + 222666.66666667, abs=CLOSE_S)
     # temperature stands still while it melts
     assert at_hours(run, 0, 30.0, 60.0) == pytest.approx([0.0, 0.0], abs=1e-9)
 
@@ -248,9 +246,7 @@ def pallet(cells):
     curve = even_curve(2000.0, 1.4, 1000.0)
     edges = np.linspace(0.0, 0.6, cells + 1)
     half = 0.3 / cells
-    cell_bodies = slab_bodies(
-        "pallet", 0, SteadyFilmLink(1.0, 0.25, half), curve, 1.0, edges, [-20.0] * cells, 1
-    )
+    cell_bodies = slab_bodies("pallet", 0, SteadyFilmLink(1.0, 0.25, half), curve, 1.0, edges, [-20.0] * cells, 1)
     air = Body("air", 0, None, even_curve(1.0), 1e-3, 30.0, 0.02)
     return build_network(
         [air, *cell_bodies],
@@ -288,9 +284,7 @@ def test_decay_rate_of_equal_cells_is_as_published_for_them(biot, exact, error_p
     for cells, percent in error_percent.items():
         curve = even_curve(1000.0, 1.0, 1000.0)
         edges = np.linspace(0.0, 1.0, cells + 1)
-        body = slab_bodies(
-            "slab", 0, SteadyFilmLink(1.0, biot, 0.5 / cells), curve, 1.0, edges, [-20.0] * cells, 1
-        )
+        body = slab_bodies("slab", 0, SteadyFilmLink(1.0, biot, 0.5 / cells), curve, 1.0, edges, [-20.0] * cells, 1)
         network = build_network(
             [Body("air", 0, None, even_curve(1.0), 1e-3, 0.0, 0.02), *body],
             [Boundary(0, 0, 1e9, "room")],
@@ -320,9 +314,7 @@ def test_film_that_goes_with_the_fourth_root_of_the_difference():
     assert broken_h(run, 0, 0.0) * HOUR_S == pytest.approx(5276.4061762756, abs=CLOSE_S)
 
 
-@pytest.mark.parametrize(
-    ("ice_kg", "end_c", "melted_kg"), [(5.0, 0.0, 2.6676646706587), (2.0, 4.1855372517792, 2.0)]
-)
+@pytest.mark.parametrize(("ice_kg", "end_c", "melted_kg"), [(5.0, 0.0, 2.6676646706587), (2.0, 4.1855372517792, 2.0)])
 def test_ice_in_a_closed_box_with_a_product(ice_kg, end_c, melted_kg):
     ice = melting_curve(2100.0, 4186.0, 334000.0)
     network = build_network(
@@ -405,9 +397,7 @@ def neumann_lambda(wall_c: float, start_c: float) -> float:
 
     def residual(x: float) -> float:
         beyond = (k2 / k1) * math.sqrt(ratio) * abs(start_c / wall_c) * math.exp(-x * x * ratio)
-        return (
-            math.exp(-x * x) / erf(x) - beyond / erfc(x * math.sqrt(ratio)) - x * math.sqrt(math.pi) / stefan
-        )
+        return math.exp(-x * x) / erf(x) - beyond / erfc(x * math.sqrt(ratio)) - x * math.sqrt(math.pi) / stefan
 
     return float(brentq(residual, 1e-3, 3.0))
 

@@ -47,9 +47,7 @@ def networks(draw):
     for j in range(cells):
         link = FixedLink(draw(st.floats(0.5, 50.0)))
         mass = draw(st.floats(0.1, 100.0))
-        bodies.append(
-            Body(f"wall {j}", 0 if j == 0 else len(bodies) - 1, link, even_curve(1400.0), mass, start_c, 0.1)
-        )
+        bodies.append(Body(f"wall {j}", 0 if j == 0 else len(bodies) - 1, link, even_curve(1400.0), mass, start_c, 0.1))
     if cells:
         boundaries.append(Boundary(len(bodies) - 1, 0, draw(st.floats(0.5, 50.0)), "wall"))
     watches = [Watch("air", BODY_TEMPERATURE, 0, 0)]
@@ -72,18 +70,14 @@ def networks(draw):
         for j in range(shells):
             link = FilmLink(area, LAW, 0.9, path) if j == 0 else CellLink(path, path)
             bodies.append(
-                Body(
-                    f"item {item}", 0 if j == 0 else len(bodies) - 1, link, curve, mass / shells, item_c, 0.01
-                )
+                Body(f"item {item}", 0 if j == 0 else len(bodies) - 1, link, curve, mass / shells, item_c, 0.01)
             )
         watches.append(Watch(f"surface {item}", BODY_TEMPERATURE, first, first))
         watches.append(Watch(f"melted {item}", MELTED, first, first + shells - 1))
     room = draw(
         st.one_of(
             st.builds(Constant, st.floats(10.0, 45.0)),
-            st.builds(
-                Day, st.floats(15.0, 35.0), st.floats(0.0, 10.0), st.floats(0.0, 86400.0), st.just(0.0)
-            ),
+            st.builds(Day, st.floats(15.0, 35.0), st.floats(0.0, 10.0), st.floats(0.0, 86400.0), st.just(0.0)),
             st.builds(Ramp, st.floats(5.0, 20.0), st.floats(20.0, 40.0), st.floats(60.0, 86400.0)),
         )
     )
@@ -140,9 +134,7 @@ def test_scaling_all_masses_and_conductances_changes_no_temperature(factor):
 
 def test_without_leak_nothing_changes_and_with_a_huge_one_it_is_the_room():
     assert march(lump(1e5, 0.0, -20.0, Constant(20.0)), 86400.0).traces[-1, 0] == -20.0
-    assert march(lump(1e5, 1e6, -20.0, Constant(20.0)), 86400.0).traces[-1, 0] == pytest.approx(
-        20.0, abs=1e-6
-    )
+    assert march(lump(1e5, 1e6, -20.0, Constant(20.0)), 86400.0).traces[-1, 0] == pytest.approx(20.0, abs=1e-6)
 
 
 def test_order_of_the_method_in_time_is_four():
