@@ -6,11 +6,16 @@ Food does not melt at one temperature: its water freezes out over a range, and t
 
 from __future__ import annotations
 
-import math
 from dataclasses import dataclass
 
 from app.errors import InputOutOfRange
+from app.physics.components import (
+    component_conductivity_w_per_m_k,
+    component_density_kg_per_m3,
+    component_specific_heat_j_per_kg_k,
+)
 from app.physics.enthalpy import FREEZING, LINEAR, QUADRATIC, EnthalpyCurve, Segment, segment_enthalpy
+from app.physics.freezing import ice_fraction
 
 LATENT_HEAT_OF_WATER_J_PER_KG = 333.6e3
 """At 0 °C, as all the correlations of this module use it (ASHRAE Refrigeration 2006, ch. 9)."""
@@ -21,37 +26,6 @@ COLDEST_OF_CURVE_C = -40.0
 _FROZEN_CONDUCTIVITY_AT_C = -25.0
 _BELOW_CURVE_C = -95.0
 _ABOVE_FREEZING_K = 100.0
-
-# value at 0 °C, per °C, per °C²: Choi and Okos (1986), ASHRAE Refrigeration 2006, ch. 9, Tables 1 and 2
-_DENSITY = {
-    "protein": (1329.9, -0.51840, 0.0),
-    "fat": (925.59, -0.41757, 0.0),
-    "carbohydrate": (1599.1, -0.31046, 0.0),
-    "fibre": (1311.5, -0.36589, 0.0),
-    "ash": (2423.8, -0.28063, 0.0),
-    "water": (997.18, 3.1439e-3, -3.7574e-3),
-    "ice": (916.89, -0.13071, 0.0),
-}
-# Two constants circulate for liquid water, 4176.2 and 4128.9: only 4176.2 gives the handbook's own products.
-# Its polynomial for below 0 °C is left out: unfrozen water in food is covered by the freezing range.
-_SPECIFIC_HEAT = {
-    "protein": (2008.2, 1.2089, -1.3129e-3),
-    "fat": (1984.2, 1.4733, -4.8008e-3),
-    "carbohydrate": (1548.8, 1.9625, -5.9399e-3),
-    "fibre": (1845.9, 1.8306, -4.6509e-3),
-    "ash": (1092.6, 1.8896, -3.6817e-3),
-    "water": (4176.2, -9.0864e-2, 5.4731e-3),
-    "ice": (2062.3, 6.0769, 0.0),
-}
-_CONDUCTIVITY = {
-    "protein": (0.17881, 1.1958e-3, -2.7178e-6),
-    "fat": (0.18071, -2.7604e-4, -1.7749e-7),
-    "carbohydrate": (0.20141, 1.3874e-3, -4.3312e-6),
-    "fibre": (0.18331, 1.2497e-3, -3.1683e-6),
-    "ash": (0.32962, 1.4011e-3, -2.9069e-6),
-    "water": (0.57109, 1.7625e-3, -6.7036e-6),
-    "ice": (2.2196, -6.2489e-3, 1.0154e-4),
-}
 
 
 @dataclass(frozen=True)
@@ -95,99 +69,6 @@ class Composition:
         return {name: value / self.total() for name, value in self.fractions().items()}
 
 
-def component_specific_heat_j_per_kg_k(component: str, temperature_c: float) -> float:
-    """Specific heat of one component of food. [J/kg·K]
-
-    Parameters
-    ----------
-    component : str
-        ``water``, ``ice``, ``protein``, ``fat``, ``carbohydrate``, ``fibre`` or ``ash``. [-]
-    temperature_c : float
-        Of the component. [°C]
-
-    Returns
-    -------
-    float
-        Specific heat. [J/kg·K]
-
-    Notes
-    -----
-    Valid -40 to 150 °C, ice to 0 °C; liquid water from 0 °C.
-
-    Examples
-    --------
-    >>> component_specific_heat_j_per_kg_k("water", 5.0)
-    4175.9
-
-    References
-    ----------
-    Choi and Okos (1986), ASHRAE Handbook Refrigeration 2006, ch. 9, Tables 1 and 2.
-    """
-    return _polynomial(_SPECIFIC_HEAT[component], temperature_c)
-
-
-def component_density_kg_per_m3(component: str, temperature_c: float) -> float:
-    """Density of one component of food. [kg/m³]
-
-    Parameters
-    ----------
-    component : str
-        As for the specific heat. [-]
-    temperature_c : float
-        Of the component. [°C]
-
-    Returns
-    -------
-    float
-        Density. [kg/m³]
-
-    Notes
-    -----
-    Valid -40 to 150 °C.
-
-    Examples
-    --------
-    >>> component_density_kg_per_m3("ice", -20.0)
-    919.5
-
-    References
-    ----------
-    Choi and Okos (1986), ASHRAE Handbook Refrigeration 2006, ch. 9, Tables 1 and 2.
-    """
-    return _polynomial(_DENSITY[component], temperature_c)
-
-
-def component_conductivity_w_per_m_k(component: str, temperature_c: float) -> float:
-    """Thermal conductivity of one component of food. [W/m·K]
-
-    Parameters
-    ----------
-    component : str
-        As for the specific heat. [-]
-    temperature_c : float
-        Of the component. [°C]
-
-    Returns
-    -------
-    float
-        Conductivity. [W/m·K]
-
-    Notes
-    -----
-    Valid -40 to 150 °C.
-
-    Examples
-    --------
-    >>> component_conductivity_w_per_m_k("water", 0.0)
-    0.5711
-
-    References
-    ----------
-    Choi and Okos (1986), ASHRAE Handbook Refrigeration 2006, ch. 9, Tables 1 and 2.
-    """
-    return _polynomial(_CONDUCTIVITY[component], temperature_c)
-
-
 def specific_heat_j_per_kg_k(composition: Composition, temperature_c: float) -> float:
     """Specific heat of unfrozen food. [J/kg·K]
 
@@ -218,8 +99,7 @@ def specific_heat_j_per_kg_k(composition: Composition, temperature_c: float) -> 
     ASHRAE Handbook Refrigeration 2006, ch. 9, mixing rule for specific heat.
     """
     return sum(
-        share * component_specific_heat_j_per_kg_k(name, temperature_c)
-        for name, share in composition.scaled().items()
+        share * component_specific_heat_j_per_kg_k(name, temperature_c) for name, share in composition.scaled().items()
     )
 
 
@@ -250,76 +130,6 @@ def bound_water_fraction(composition: Composition) -> float:
     Schwartzberg (1976) in ASHRAE Handbook Refrigeration 2006, ch. 9.
     """
     return min(0.4 * composition.protein, composition.water)
-
-
-def ice_fraction(*, free_water: float, initial_freezing_c: float, temperature_c: float) -> float:
-    """Ice in a kilogram of food. [kg/kg]
-
-    Parameters
-    ----------
-    free_water : float
-        Water that can freeze, kilograms per kilogram of food. [-]
-    initial_freezing_c : float
-        Where freezing begins, below 0. [°C]
-    temperature_c : float
-        Of the food. [°C]
-
-    Returns
-    -------
-    float
-        ``x (1 - tf / t)``, none above the freezing point. [kg/kg]
-
-    Notes
-    -----
-    Ideal solution; models of ice content differ by 5 to 20 %.
-
-    Examples
-    --------
-    >>> ice_fraction(free_water=0.741, initial_freezing_c=-2.2, temperature_c=-18.0)
-    0.650
-
-    References
-    ----------
-    Miles (1974), Chen (1985) in ASHRAE Handbook Refrigeration 2006, ch. 9.
-    """
-    if temperature_c >= initial_freezing_c:
-        return 0.0
-    return free_water * (1.0 - initial_freezing_c / temperature_c)
-
-
-def ice_fraction_by_tchigeov(*, water: float, initial_freezing_c: float, temperature_c: float) -> float:
-    """Ice in a kilogram of food by an empirical relation, for comparison. [kg/kg]
-
-    Parameters
-    ----------
-    water : float
-        Water of the unfrozen food. [-]
-    initial_freezing_c : float
-        Where freezing begins, below 0. [°C]
-    temperature_c : float
-        Of the food. [°C]
-
-    Returns
-    -------
-    float
-        ``1.105 x / (1 + 0.7138 / ln(tf - t + 1))``. [kg/kg]
-
-    Notes
-    -----
-    Between the freezing point and -45 °C.
-
-    Examples
-    --------
-    >>> ice_fraction_by_tchigeov(water=0.8122, initial_freezing_c=-2.2, temperature_c=-18.0)
-    0.716
-
-    References
-    ----------
-    Tchigeov (1979) in ASHRAE Handbook Refrigeration 2006, ch. 9.
-    """
-    if temperature_c >= initial_freezing_c:
-        return 0.0
-    return 1.105 * water / (1.0 + 0.7138 / math.log(initial_freezing_c - temperature_c + 1.0))
 
 
 def conductivity_w_per_m_k(composition: Composition, ice: float, temperature_c: float) -> float:
@@ -358,9 +168,7 @@ def conductivity_w_per_m_k(composition: Composition, ice: float, temperature_c: 
     return float((parallel * perpendicular) ** 0.5)
 
 
-def conductivity_bounds_w_per_m_k(
-    composition: Composition, ice: float, temperature_c: float
-) -> tuple[float, float]:
+def conductivity_bounds_w_per_m_k(composition: Composition, ice: float, temperature_c: float) -> tuple[float, float]:
     """Highest and lowest conductivity that the components allow. [W/m·K]
 
     Parameters
@@ -395,12 +203,8 @@ def conductivity_bounds_w_per_m_k(
     volumes = _volumes(composition, ice, temperature_c)
     total = sum(volumes.values())
     shares = {name: volume / total for name, volume in volumes.items()}
-    parallel = sum(
-        share * component_conductivity_w_per_m_k(name, temperature_c) for name, share in shares.items()
-    )
-    across = sum(
-        share / component_conductivity_w_per_m_k(name, temperature_c) for name, share in shares.items()
-    )
+    parallel = sum(share * component_conductivity_w_per_m_k(name, temperature_c) for name, share in shares.items())
+    across = sum(share / component_conductivity_w_per_m_k(name, temperature_c) for name, share in shares.items())
     return parallel, 1.0 / across
 
 
@@ -474,15 +278,14 @@ def food_curve(composition: Composition, *, initial_freezing_c: float) -> Enthal
     """
     if not -38.0 <= initial_freezing_c <= -0.05:
         raise InputOutOfRange("initial_freezing_c", initial_freezing_c, "°C", -38.0, -0.05)
+    # solids are what is not water, as in the handbook, also where the fractions do not quite add up
     solids = 1.0 - composition.water
     free = composition.water - bound_water_fraction(composition)
     bend = -free * LATENT_HEAT_OF_WATER_J_PER_KG * initial_freezing_c
     frozen = 1550.0 + 1260.0 * solids
     unfrozen = 4190.0 - 2300.0 * solids - 628.0 * solids**3
     top = segment_enthalpy(FREEZING, COLDEST_OF_CURVE_C, 0.0, frozen, bend, initial_freezing_c)
-    ice = ice_fraction(
-        free_water=free, initial_freezing_c=initial_freezing_c, temperature_c=COLDEST_OF_CURVE_C
-    )
+    ice = ice_fraction(free_water=free, initial_freezing_c=initial_freezing_c, temperature_c=COLDEST_OF_CURVE_C)
     return EnthalpyCurve(
         (
             _below(composition, ice),
@@ -496,7 +299,7 @@ def food_curve(composition: Composition, *, initial_freezing_c: float) -> Enthal
                 unfrozen,
             ),
         ),
-        conductivity_liquid_w_per_m_k=conductivity_w_per_m_k(composition, 0.0, max(initial_freezing_c, 0.0)),
+        conductivity_liquid_w_per_m_k=conductivity_w_per_m_k(composition, 0.0, 0.0),
         conductivity_solid_w_per_m_k=conductivity_w_per_m_k(composition, ice, _FROZEN_CONDUCTIVITY_AT_C),
         density_kg_per_m3=density_kg_per_m3(composition, 0.0, 0.0),
     )
@@ -515,9 +318,7 @@ def _below(composition: Composition, ice: float) -> Segment:
     cold, warm = heat(_BELOW_CURVE_C), heat(COLDEST_OF_CURVE_C)
     width = COLDEST_OF_CURVE_C - _BELOW_CURVE_C
     start = -0.5 * (cold + warm) * width
-    return Segment(
-        QUADRATIC, _BELOW_CURVE_C, COLDEST_OF_CURVE_C, start, 0.0, cold, (warm - cold) / width, ice, ice
-    )
+    return Segment(QUADRATIC, _BELOW_CURVE_C, COLDEST_OF_CURVE_C, start, 0.0, cold, (warm - cold) / width, ice, ice)
 
 
 def _volumes(composition: Composition, ice: float, temperature_c: float) -> dict[str, float]:
@@ -526,12 +327,5 @@ def _volumes(composition: Composition, ice: float, temperature_c: float) -> dict
     masses["water"] = max(masses["water"] - ice, 0.0)
     masses["ice"] = ice
     return {
-        name: mass / component_density_kg_per_m3(name, temperature_c)
-        for name, mass in masses.items()
-        if mass > 0.0
+        name: mass / component_density_kg_per_m3(name, temperature_c) for name, mass in masses.items() if mass > 0.0
     }
-
-
-def _polynomial(coefficients: tuple[float, float, float], temperature_c: float) -> float:
-    constant, linear, square = coefficients
-    return constant + linear * temperature_c + square * temperature_c**2

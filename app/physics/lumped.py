@@ -7,7 +7,7 @@ from __future__ import annotations
 
 import math
 
-from app.errors import InputOutOfRange
+from app.errors import InputOutOfRange, UnknownKey
 
 
 def warming_time_s(
@@ -58,15 +58,11 @@ def warming_time_s(
     """
     left = (surroundings_c - end_c) / (surroundings_c - start_c) if surroundings_c != start_c else math.nan
     if not 0.0 < left <= 1.0:
-        raise InputOutOfRange(
-            "end_c", end_c, "°C", min(start_c, surroundings_c), max(start_c, surroundings_c)
-        )
+        raise InputOutOfRange("end_c", end_c, "°C", min(start_c, surroundings_c), max(start_c, surroundings_c))
     return -heat_capacity_j_per_k / heat_leak_w_per_k * math.log(left)
 
 
-def melting_time_s(
-    *, melting_j: float, heat_leak_w_per_k: float, surroundings_c: float, melting_c: float
-) -> float:
+def melting_time_s(*, melting_j: float, heat_leak_w_per_k: float, surroundings_c: float, melting_c: float) -> float:
     """Time in which a plateau lasts. [s]
 
     Parameters
@@ -164,6 +160,11 @@ def effective_film_w_per_m2_k(
     float
         ``1 / (1/h + L/(n k))`` with n 3, 4, 5. [W/m²·K]
 
+    Raises
+    ------
+    UnknownKey
+        Another shape.
+
     Notes
     -----
     Slowest rate within 1.3 % up to a Biot number of 1.
@@ -177,5 +178,7 @@ def effective_film_w_per_m2_k(
     ----------
     Parabolic profile; similar corrections in Ostrogorsky (2009), J. Heat Transfer 131:011303.
     """
-    parts = {"slab": 3.0, "cylinder": 4.0, "sphere": 5.0}[shape]
-    return 1.0 / (1.0 / film_w_per_m2_k + length_m / (parts * conductivity_w_per_m_k))
+    parts = {"slab": 3.0, "cylinder": 4.0, "sphere": 5.0}
+    if shape not in parts:
+        raise UnknownKey("shape", shape, tuple(parts))
+    return 1.0 / (1.0 / film_w_per_m2_k + length_m / (parts[shape] * conductivity_w_per_m_k))

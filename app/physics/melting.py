@@ -206,6 +206,7 @@ def phase_change_curve(
         conductivity_liquid_w_per_m_k,
         conductivity_solid_w_per_m_k,
         density_kg_per_m3,
+        latent_j_per_kg,
     )
 
 
@@ -307,6 +308,9 @@ def curve_from_points(
     ----------
     The user's own data.
     """
+    if len(temperature_c) != len(enthalpy_j_per_kg):
+        wanted = len(temperature_c)
+        raise InputOutOfRange("number of enthalpies", len(enthalpy_j_per_kg), "", wanted, wanted)
     points = list(zip(temperature_c, enthalpy_j_per_kg, strict=True))
     if len(points) < 2:
         raise InputOutOfRange("number of points", len(points), "", 2, None)
