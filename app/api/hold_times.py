@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from typing import Any
+from typing import Annotated, Any
 
 from fastapi import APIRouter, Depends, Request
 
@@ -65,13 +65,13 @@ class _Question:
 
 
 @router.post("/hold-time", openapi_extra=_EXAMPLE)
-async def ask_hold_time(request: Request, body: Any = Depends(json_body)) -> dict[str, Any]:
+async def ask_hold_time(request: Request, body: Annotated[Any, Depends(json_body)]) -> dict[str, Any]:
     """How long one store keeps its limits with the door shut: the best estimate, and the evidence behind it."""
     return await _workers(request).ask(_answer, body)
 
 
 @router.post("/hold-times", openapi_extra=_EXAMPLES)
-async def ask_hold_times(request: Request, body: Any = Depends(json_body)) -> dict[str, Any]:
+async def ask_hold_times(request: Request, body: Annotated[Any, Depends(json_body)]) -> dict[str, Any]:
     """The same for many stores, answers in order; one that is refused does not fail the rest."""
     if not isinstance(body, list) or len(body) > MOST_STORES:
         given = len(body) if isinstance(body, list) else None

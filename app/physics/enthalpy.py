@@ -51,13 +51,14 @@ class EnthalpyCurve:
     """Temperature against enthalpy of one kilogram of something; the ends go on beyond the last points.
 
     ``conductivity_solid_w_per_m_k`` holds where ``ice`` equals ``ice_full``, ``conductivity_liquid_w_per_m_k``
-    where there is none; in between it goes with the ice.
+    where there is none; in between it goes with the ice. ``latent_j_per_kg`` is the heat of fusion of its ice.
     """
 
     segments: tuple[Segment, ...]
     conductivity_liquid_w_per_m_k: float
     conductivity_solid_w_per_m_k: float
     density_kg_per_m3: float
+    latent_j_per_kg: float = 333.6e3
 
     @property
     def ice_full(self) -> float:

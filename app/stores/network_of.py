@@ -24,12 +24,9 @@ from app.engine.network import (
     FixedLink,
     Watch,
 )
-from app.physics.films import (
-    AIR_SPECIFIC_HEAT_J_PER_KG_K,
-    air_density_kg_per_m3,
-    surface_resistance_m2_k_per_w,
-)
+from app.physics.air import AIR_SPECIFIC_HEAT_J_PER_KG_K, air_density_kg_per_m3
 from app.physics.melting import constant_curve
+from app.physics.walls import surface_resistance_m2_k_per_w
 from app.reference import opening_kind
 from app.stores.definition import (
     BoxInside,
