@@ -64,6 +64,7 @@ def water_curve() -> EnthalpyCurve:
         conductivity_liquid_w_per_m_k=0.57,
         conductivity_solid_w_per_m_k=2.2,
         density_kg_per_m3=1000.0,
+        latent_j_per_kg=WATER_LATENT_J_PER_KG,
     )
 
 
@@ -121,6 +122,7 @@ def aqueous_curve(*, freezing_c: float, water_fraction: float | None = None) -> 
         conductivity_liquid_w_per_m_k=0.57 * water + 0.2 * (1.0 - water),
         conductivity_solid_w_per_m_k=2.2 * water + 0.2 * (1.0 - water),
         density_kg_per_m3=1000.0 + 300.0 * (1.0 - water),
+        latent_j_per_kg=WATER_LATENT_J_PER_KG,
     )
 
 
