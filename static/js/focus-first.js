@@ -1,0 +1,4 @@
+// Faults take the focus when the page comes.
+export function start(summary) {
+  summary.focus();
+}
