@@ -21,7 +21,7 @@ _ICE_PER_K = 7.208
 of it from -80 to 0 °C."""
 
 _WATER_J_PER_KG_K = 4190.0
-"""Liquid water, 0 to 40 °C (IAPWS, within 0.5 %)."""
+"""Liquid water, 0 to 40 °C (IAPWS, within 0.7 %)."""
 
 _SOLIDS_J_PER_KG_K = 1300.0
 _HIGHEST_FREEZING_C = -0.05
@@ -39,7 +39,7 @@ def water_curve() -> EnthalpyCurve:
 
     Notes
     -----
-    -90 to 60 °C, within 0.5 % of the reference equations.
+    -90 to 60 °C, within 0.7 % of the reference equations.
 
     Examples
     --------
