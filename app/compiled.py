@@ -32,7 +32,7 @@ def code_folder() -> Path:
     return home / f"compiled-{digest}"
 
 
-numba.config.CACHE_DIR = str(code_folder())
+setattr(numba.config, "CACHE_DIR", str(code_folder()))  # noqa: B010  the attribute has no declared type
 
 
 def compiled(function: _Function) -> _Function:

@@ -14,7 +14,10 @@ from app.engine import MeanKinetic, Passed, Trace, passed_above, passed_below
 from app.engine.network import COLDEST, MEAN, MELTED, WARMEST
 from app.reference import PresetLimit, limit_preset
 from app.stores import Limit
+from app.stores.definition import AboveLimit, BelowLimit, MeanKineticLimit
 from app.units import hours_from_seconds, seconds_from_hours
+
+_JUDGED = (AboveLimit, BelowLimit, MeanKineticLimit, PresetLimit)
 
 _POINTS = {"warmest": WARMEST, "mean": MEAN, "coldest": COLDEST}
 
@@ -53,6 +56,7 @@ def _plain(limit: Limit | PresetLimit, source: str | None) -> PlainLimit:
     if limit.kind == "thawed":
         text = f"more than {100.0 * limit.share:g} % of the ice melted"
         return PlainLimit("thawed", MELTED, limit.share, 0.0, 0.0, 0.0, text, source)
+    assert isinstance(limit, _JUDGED)  # presets are opened before, and growth is refused by the definition
     longer_h = getattr(limit, "longer_than_h", 0.0)
     text = f"{limit.kind.replace('_', ' ')} {limit.temperature_c:g} °C"
     if limit.kind == "mean_kinetic":

@@ -6,10 +6,12 @@ step, which goes on smoothly past the segment's ends, so that every step is a sm
 steps at the breaks.
 """
 
+from typing import Any
+
 import numpy as np
 
 from app.compiled import compiled, compiled_inline
-from app.engine.network import FILM, SERIES
+from app.engine.network import FILM, SERIES, Floats, Records, Whole
 from app.physics import (
     LINEAR,
     film_flow_w,
@@ -32,7 +34,7 @@ ROWS = 23
 
 
 @compiled
-def read_states(bodies, segments, locked, rows, energy_row):
+def read_states(bodies: Records, segments: Records, locked: Whole, rows: Floats, energy_row: int) -> None:
     """Temperature and thermal resistivity of every body from a row of enthalpies."""
     for i in range(bodies.shape[0]):
         body = bodies[i]
@@ -59,7 +61,7 @@ def read_states(bodies, segments, locked, rows, energy_row):
 
 
 @compiled
-def read_slopes(bodies, segments, locked, rows, energy_row):
+def read_slopes(bodies: Records, segments: Records, locked: Whole, rows: Floats, energy_row: int) -> None:
     """Slopes with enthalpy of what ``read_states`` has just written for the same row."""
     for i in range(bodies.shape[0]):
         body = bodies[i]
@@ -86,7 +88,7 @@ def read_slopes(bodies, segments, locked, rows, energy_row):
 
 
 @compiled
-def ice_share(segment, energy_j, temperature_c):
+def ice_share(segment: Any, energy_j: float, temperature_c: float) -> float:
     """Share of full freezing on a segment."""
     return segment_ice(
         segment["shape"],
@@ -102,7 +104,7 @@ def ice_share(segment, energy_j, temperature_c):
 
 
 @compiled_inline
-def plain_conductance_w_per_k(body, rows, i):
+def plain_conductance_w_per_k(body: Any, rows: Floats, i: int) -> float:
     """Conductance of a link without a film of its own: given, or a resistance and two paths in series."""
     conductance = body["conductance_w_per_k"]
     if body["link"] == SERIES:
@@ -115,7 +117,7 @@ def plain_conductance_w_per_k(body, rows, i):
 
 
 @compiled
-def film_link_flow_w(body, rows, i):
+def film_link_flow_w(body: Any, rows: Floats, i: int) -> tuple[float, float, float]:
     """Heat flow from the air into a surface, and its change with the two temperatures. [W, W/K, W/K]"""
     return film_flow_w(
         rows[TEMPERATURE, i],
@@ -132,7 +134,7 @@ def film_link_flow_w(body, rows, i):
 
 
 @compiled
-def link_flow_w(body, rows, i):
+def link_flow_w(body: Any, rows: Floats, i: int) -> float:
     """Heat flow from the parent into body ``i``. [W]"""
     if body["link"] == FILM:
         return film_link_flow_w(body, rows, i)[0]
@@ -141,7 +143,7 @@ def link_flow_w(body, rows, i):
 
 
 @compiled
-def rates(bodies, boundaries, drive_c, rows, rate_row, path_w):
+def rates(bodies: Records, boundaries: Records, drive_c: Floats, rows: Floats, rate_row: int, path_w: Floats) -> None:
     """Net heat flow into every body into a row, and heat from outside by path. [W]"""
     n = bodies.shape[0]
     for i in range(n):
@@ -167,7 +169,7 @@ def rates(bodies, boundaries, drive_c, rows, rate_row, path_w):
 
 
 @compiled
-def linearise(bodies, boundaries, rows):
+def linearise(bodies: Records, boundaries: Records, rows: Floats) -> None:
     """Derivatives of the heat balance by enthalpy into OWN, FROM_PARENT and DIAGONAL. [1/s]
 
     OWN is d(flow from the parent) / d(own enthalpy), FROM_PARENT the same by the parent's enthalpy.
@@ -202,7 +204,7 @@ def linearise(bodies, boundaries, rows):
 
 
 @compiled
-def eliminate(bodies, rows, shift_per_s):
+def eliminate(bodies: Records, rows: Floats, shift_per_s: float) -> None:
     """Factor ``W = shift I - J`` from the leaves to the root: INVERSE pivots and LIFT per body."""
     n = bodies.shape[0]
     for i in range(n):
@@ -217,7 +219,7 @@ def eliminate(bodies, rows, shift_per_s):
 
 
 @compiled
-def solve(bodies, rows, right_row):
+def solve(bodies: Records, rows: Floats, right_row: int) -> None:
     """Solve ``W k = right`` in place of a row, leaf to root and back."""
     n = bodies.shape[0]
     for i in range(n - 1, 0, -1):
@@ -229,7 +231,9 @@ def solve(bodies, rows, right_row):
 
 
 @compiled
-def drive_temperatures(pieces, piece_starts, current, time_s, drive_c, drive_k_per_s):
+def drive_temperatures(
+    pieces: Records, piece_starts: Whole, current: Whole, time_s: float, drive_c: Floats, drive_k_per_s: Floats
+) -> None:
     """Temperature of each of the surroundings on its current piece, and its rate. [°C, K/s]"""
     for d in range(drive_c.shape[0]):
         piece = pieces[piece_starts[d] + current[d]]

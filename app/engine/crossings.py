@@ -47,7 +47,7 @@ class Trace:
         self.lengths_s = times_s[4::4] - self.starts_s
         self.end_s = float(times_s[-1])
         steps = np.lib.stride_tricks.sliding_window_view(values, 5)[::4]
-        self.powers = steps @ _TO_POWERS.T
+        self.powers: Floats = np.asarray(steps @ _TO_POWERS.T, dtype=np.float64)
         self.first = float(values[0])
 
     def at(self, times_s: Floats) -> Floats:

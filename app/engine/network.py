@@ -18,6 +18,11 @@ from numpy.typing import NDArray
 from app.engine.histories import History, pieces_of
 from app.physics import EnthalpyCurve, FilmLaw
 
+Floats = NDArray[np.float64]
+Whole = NDArray[np.int64]
+Records = NDArray[np.void]
+"""Arrays of the engine; the kinds of records stand below."""
+
 FIXED, SERIES, FILM = 0, 1, 2
 """Links to the parent: a conductance; a resistance with paths through bodies that may melt; still air."""
 

@@ -4,6 +4,7 @@ Called by ``march`` only. ``rows`` is the working space that ``balance`` describ
 """
 
 import math
+from typing import Any
 
 import numpy as np
 
@@ -28,6 +29,7 @@ from app.engine.balance import (
     read_states,
     solve,
 )
+from app.engine.network import Floats, Records, Whole
 from app.engine.rosenbrock import ALPHA, GAMMA, PUSH, STAGES, A, C
 from app.engine.rosenbrock import FOURTH as FOURTH_WEIGHTS
 from app.engine.rosenbrock import THIRD as THIRD_WEIGHTS
@@ -48,18 +50,18 @@ _SHRINK_LIMIT = 0.2
 
 @compiled
 def march_one(
-    bodies,
-    segments,
-    boundaries,
-    pieces,
-    piece_starts,
-    stops_s,
-    watches,
-    n_paths,
-    horizon_s,
-    tolerance,
-    longest_step_s,
-):
+    bodies: Records,
+    segments: Records,
+    boundaries: Records,
+    pieces: Records,
+    piece_starts: Whole,
+    stops_s: Floats,
+    watches: Records,
+    n_paths: int,
+    horizon_s: float,
+    tolerance: float,
+    longest_step_s: float,
+) -> tuple[int, float, int, int, Floats, Floats, Floats, float, Floats]:
     """March one network to the horizon: status, time reached, counts, trace, energies and heat by path.
 
     The trace has the time in column 0 and the watches behind it, one row a point.
@@ -153,7 +155,7 @@ def march_one(
 
 
 @compiled
-def _choose_pieces(pieces, piece_starts, piece, time):
+def _choose_pieces(pieces: Records, piece_starts: Whole, piece: Whole, time: float) -> None:
     """Move every history on to the piece that is valid from now on."""
     for d in range(piece.shape[0]):
         last = piece_starts[d + 1] - 1 - piece_starts[d]
@@ -162,7 +164,19 @@ def _choose_pieces(pieces, piece_starts, piece, time):
 
 
 @compiled
-def _begin_step(bodies, segments, boundaries, pieces, piece_starts, piece, locked, rows, drives, path_w, time):
+def _begin_step(
+    bodies: Records,
+    segments: Records,
+    boundaries: Records,
+    pieces: Records,
+    piece_starts: Whole,
+    piece: Whole,
+    locked: Whole,
+    rows: Floats,
+    drives: Floats,
+    path_w: Floats,
+    time: float,
+) -> None:
     """Read the balance and its derivatives at the start of a step, on the segments and pieces then valid."""
     drive_temperatures(pieces, piece_starts, piece, time, drives[0], drives[1])
     read_states(bodies, segments, locked, rows, ENERGY)
@@ -182,7 +196,20 @@ def _begin_step(bodies, segments, boundaries, pieces, piece_starts, piece, locke
 
 
 @compiled
-def _stages(bodies, segments, boundaries, pieces, piece_starts, piece, locked, rows, drives, path_w, time, h):
+def _stages(
+    bodies: Records,
+    segments: Records,
+    boundaries: Records,
+    pieces: Records,
+    piece_starts: Whole,
+    piece: Whole,
+    locked: Whole,
+    rows: Floats,
+    drives: Floats,
+    path_w: Floats,
+    time: float,
+    h: float,
+) -> None:
     """The six stages of a step of ``h`` seconds, and the new energies."""
     n = bodies.shape[0]
     eliminate(bodies, rows, 1.0 / (GAMMA * h))
@@ -208,7 +235,7 @@ def _stages(bodies, segments, boundaries, pieces, piece_starts, piece, locked, r
 
 
 @compiled
-def _combine(rows, weights, count):
+def _combine(rows: Floats, weights: Floats, count: int) -> None:
     """Enthalpies at a stage: start plus weighted earlier stages, into the row AT."""
     n = rows.shape[1]
     for i in range(n):
@@ -219,7 +246,7 @@ def _combine(rows, weights, count):
 
 
 @compiled
-def _error(bodies, rows):
+def _error(bodies: Records, rows: Floats) -> float:
     """Error of the step against the bodies' tolerances, 1 at the limit; not finite if anything is not."""
     error = 0.0
     for i in range(bodies.shape[0]):
@@ -232,7 +259,7 @@ def _error(bodies, rows):
 
 
 @compiled
-def _continue(rows):
+def _continue(rows: Floats) -> None:
     """The two rows that make the step a cubic in time."""
     for i in range(rows.shape[1]):
         third, fourth = 0.0, 0.0
@@ -244,20 +271,20 @@ def _continue(rows):
 
 
 @compiled
-def _between(rows, share):
+def _between(rows: Floats, share: float) -> None:
     """Enthalpies at a share of the step, into the row AT."""
     for i in range(rows.shape[1]):
         rows[AT, i] = _one_between(rows, i, share)
 
 
 @compiled
-def _one_between(rows, i, share):
+def _one_between(rows: Floats, i: int, share: float) -> float:
     rest = 1.0 - share
     return rest * rows[ENERGY, i] + share * (rows[NEW, i] + rest * (rows[THIRD, i] + share * rows[FOURTH, i]))
 
 
 @compiled
-def _first_break(bodies, segments, locked, rows):
+def _first_break(bodies: Records, segments: Records, locked: Whole, rows: Floats) -> float:
     """Share of the step at which a body first passes a break of its curve by more than is allowed, else 1."""
     first = 1.0
     for i in range(bodies.shape[0]):
@@ -273,7 +300,7 @@ def _first_break(bodies, segments, locked, rows):
 
 
 @compiled
-def _share_at(rows, i, target_j):
+def _share_at(rows: Floats, i: int, target_j: float) -> float:
     """Share of the step at which a body's enthalpy is at a target between its start and its end."""
     low, high = 0.0, 1.0
     rises = rows[NEW, i] > rows[ENERGY, i]
@@ -287,7 +314,7 @@ def _share_at(rows, i, target_j):
 
 
 @compiled
-def _add_path_heat(boundaries, rows, path_w, path_j, h):
+def _add_path_heat(boundaries: Records, rows: Floats, path_w: Floats, path_j: Floats, h: float) -> None:
     """Heat that came in by each path during the step, by the same stages as the bodies' heat."""
     n_paths = path_j.shape[0]
     heat_j = np.zeros((STAGES, n_paths))
@@ -307,7 +334,7 @@ def _add_path_heat(boundaries, rows, path_w, path_j, h):
 
 
 @compiled
-def _accept(bodies, segments, locked, rows):
+def _accept(bodies: Records, segments: Records, locked: Whole, rows: Floats) -> float:
     """Take the step: new energies, new segments. Returns the heat that moved."""
     moved_j = 0.0
     for i in range(bodies.shape[0]):
@@ -329,12 +356,12 @@ def _accept(bodies, segments, locked, rows):
 
 
 @compiled
-def _slack_j(segment):
+def _slack_j(segment: Any) -> float:
     return segment["end_tolerance_j"] if math.isfinite(segment["end_tolerance_j"]) else 0.0
 
 
 @compiled
-def _longer(trace):
+def _longer(trace: Floats) -> Floats:
     """The same trace with room for twice as many points."""
     longer = np.zeros((2 * trace.shape[0], trace.shape[1]))
     for point in range(trace.shape[0]):

@@ -1,13 +1,35 @@
 """What is traced during a run: temperatures of bodies, the points of an item, and what has melted. Compiled."""
 
+from typing import Any
+
 from app.compiled import compiled
 from app.engine.balance import RESISTIVITY, TEMPERATURE, ice_share, link_flow_w, read_states
-from app.engine.network import BODY_TEMPERATURE, COLDEST, MEAN, MELTED, SOLID_LEFT, SURFACE, WARMEST
+from app.engine.network import (
+    BODY_TEMPERATURE,
+    COLDEST,
+    MEAN,
+    MELTED,
+    SOLID_LEFT,
+    SURFACE,
+    WARMEST,
+    Floats,
+    Records,
+    Whole,
+)
 from app.physics import segment_temperature
 
 
 @compiled
-def watched_values(bodies, segments, watches, locked, rows, energy_row, trace, point):
+def watched_values(
+    bodies: Records,
+    segments: Records,
+    watches: Records,
+    locked: Whole,
+    rows: Floats,
+    energy_row: int,
+    trace: Floats,
+    point: int,
+) -> None:
     """Write the value of every watch at a row of enthalpies into a row of the trace, from column 1 on."""
     read_states(bodies, segments, locked, rows, energy_row)
     for w in range(watches.shape[0]):
@@ -30,7 +52,7 @@ def watched_values(bodies, segments, watches, locked, rows, energy_row, trace, p
 
 
 @compiled
-def _mean_c(segments, watch, rows, energy_row):
+def _mean_c(segments: Records, watch: Any, rows: Floats, energy_row: int) -> float:
     """Temperature that the item's heat would give it if it were even. [°C]"""
     total_j = 0.0
     for i in range(watch["first_body"], watch["last_body"] + 1):
@@ -51,7 +73,7 @@ def _mean_c(segments, watch, rows, energy_row):
 
 
 @compiled
-def _solid_share(bodies, segments, watch, locked, rows, energy_row):
+def _solid_share(bodies: Records, segments: Records, watch: Any, locked: Whole, rows: Floats, energy_row: int) -> float:
     """Ice in the item as a share of what it holds when frozen through, by mass of its bodies."""
     solid_kg = 0.0
     mass_kg = 0.0
@@ -63,7 +85,7 @@ def _solid_share(bodies, segments, watch, locked, rows, energy_row):
 
 
 @compiled
-def _extreme_c(bodies, watch, rows):
+def _extreme_c(bodies: Records, watch: Any, rows: Floats) -> float:
     """Temperature of the item's surface, or the warmest or coldest of its surface and its bodies. [°C]"""
     first = watch["first_body"]
     flow_w = link_flow_w(bodies[first], rows, first)

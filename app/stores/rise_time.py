@@ -71,7 +71,7 @@ def _with_heat_leak(definition: StoreDefinition, overall: RiseTime, leak_w_per_k
 
 def _as_heat_leak(overall: RiseTime, leak_w_per_k: float) -> dict[str, object]:
     """The same wall, known by its heat leak."""
-    known = {"heat_leak_w_per_k": leak_w_per_k}
+    known: dict[str, object] = {"heat_leak_w_per_k": leak_w_per_k}
     given = {"wall_mass_kg": overall.wall_mass_kg, "inside_area_m2": overall.inside_area_m2}
     return known | {name: value.value for name, value in given.items() if value is not None}
 

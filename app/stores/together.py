@@ -15,8 +15,10 @@ from app.stores.definition import (
     Contents,
     CurveSubstance,
     DriftHistory,
+    EnergyUse,
     Face,
     Limit,
+    RiseTime,
     SeriesHistory,
     StoreDefinition,
 )
@@ -140,7 +142,7 @@ def _names(definition: StoreDefinition) -> Faults:
     for k, fitting in enumerate(definition.enclosure.fittings):
         yield from _known(f"enclosure.fittings[{k}].material", material, fitting.material)
     overall = definition.enclosure.overall
-    if overall is not None and hasattr(overall, "test_load_food"):
+    if isinstance(overall, RiseTime):
         yield from _known("enclosure.overall.test_load_food", food, overall.test_load_food)
     for path, limit in _limits(definition):
         if limit.kind == "preset":
@@ -245,14 +247,14 @@ def _histories(definition: StoreDefinition) -> Faults:
     overall = definition.enclosure.overall
     if overall is None:
         return
-    if hasattr(overall, "inside_c") and overall.inside_c.value >= overall.at_room_c.value:
+    if isinstance(overall, EnergyUse) and overall.inside_c.value >= overall.at_room_c.value:
         yield FieldFault(
             "enclosure.overall.inside_c",
             "Inside must be colder than the room of the energy test.",
             overall.inside_c.value,
             f"below {overall.at_room_c.value:g} °C",
         )
-    if hasattr(overall, "to_c") and not overall.from_c.value < overall.to_c.value < overall.at_room_c.value:
+    if isinstance(overall, RiseTime) and not overall.from_c.value < overall.to_c.value < overall.at_room_c.value:
         yield FieldFault(
             "enclosure.overall.to_c",
             "The end of the rise must lie between its start and the room.",
