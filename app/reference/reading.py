@@ -13,7 +13,8 @@ from dataclasses import fields, replace
 from typing import Any, Protocol, TypeVar, get_type_hints
 
 from app.errors import TableFault
-from app.reference.rows import BOUNDS, STATUS_WORDS, LimitPreset, LimitRow, PresetLimit, Source
+from app.reference.bounds import BOUNDS, STATUS_WORDS
+from app.reference.rows import LimitPreset, LimitRow, PresetLimit, Source
 
 UNKNOWN = "NA"
 ESTIMATE = "estimate"
@@ -32,18 +33,16 @@ class _Row(Protocol):
 RowT = TypeVar("RowT", bound=_Row)
 
 
-def read_rows(file: str, text: str, row_type: type[RowT], sources: Mapping[str, Source] | None) -> tuple[RowT, ...]:
+def read_rows(
+    file: str, text: str, row_type: type[RowT], sources: Mapping[str, Source] | None
+) -> tuple[RowT, ...]:
     """Every row of a table, in its order; ``sources`` is None for the table of sources itself.
 
     Raises ``TableFault`` for the first fault.
     """
     names = [field.name for field in fields(row_type) if field.name != _FILLED_IN]  # type: ignore[arg-type]
-    reader = csv.DictReader(io.StringIO(text), strict=True)
-    _check_header(file, reader.fieldnames or (), names)
     rows: dict[str, RowT] = {}
-    for number, cells in enumerate(reader, start=2):
-        if None in cells or None in cells.values():
-            raise TableFault(file, number, f"has not {len(names)} cells; put text with commas between quotes")
+    for number, cells in _cells(file, text, names):
         row = _row(file, number, cells, row_type)
         if row.key in rows:
             raise TableFault(file, number, f"{row.key!r} stands in the table already")
@@ -60,16 +59,35 @@ def presets_of(file: str, rows: Iterable[LimitRow]) -> tuple[LimitPreset, ...]:
         names = (row.preset, row.label, row.group, row.body, row.document, row.edition)
         known = presets.setdefault(row.preset, LimitPreset(*names, limits=()))
         if (known.key, known.label, known.group, known.body, known.document, known.edition) != names:
-            raise TableFault(file, number, f"label, group or document differ from the first row of {row.preset!r}")
+            raise TableFault(
+                file, number, f"label, group or document differ from the first row of {row.preset!r}"
+            )
         shared = {field.name: getattr(row, field.name) for field in fields(PresetLimit)}
         presets[row.preset] = replace(known, limits=(*known.limits, PresetLimit(**shared)))
     return tuple(presets.values())
 
 
 def source_text(source: Source) -> str:
-    """A source in one line, for a person."""
-    parts = (source.authors, source.title, source.publisher, source.year, source.page)
-    return ", ".join(part for part in parts if part != UNKNOWN)
+    """A source in one line, for a person; what an earlier part already says is left out."""
+    told: list[str] = []
+    for part in (source.authors, source.title, source.publisher, source.year, source.page):
+        if part != UNKNOWN and not any(part in earlier for earlier in told):
+            told.append(part)
+    return ", ".join(told)
+
+
+def _cells(file: str, text: str, names: list[str]) -> Iterator[tuple[int, dict[str, str]]]:
+    """Line number and cells by column name of every row below the header."""
+    reader = csv.DictReader(io.StringIO(text), strict=True)
+    try:
+        _check_header(file, reader.fieldnames or (), names)
+        for cells in reader:
+            if None in cells or None in cells.values():
+                message = f"has not {len(names)} cells; put text with commas between quotes"
+                raise TableFault(file, reader.line_num, message)
+            yield reader.line_num, cells
+    except csv.Error as broken:
+        raise TableFault(file, reader.line_num, f"cannot be read: {broken}") from broken
 
 
 def _check_header(file: str, given: Iterable[str], wanted: list[str]) -> None:
@@ -78,13 +96,17 @@ def _check_header(file: str, given: Iterable[str], wanted: list[str]) -> None:
     missing = [name for name in wanted if name not in header]
     if strange or missing or len(header) != len(wanted):
         raise TableFault(
-            file, 1, f"unknown columns: {', '.join(strange) or 'none'}; missing: {', '.join(missing) or 'none'}"
+            file,
+            1,
+            f"unknown columns: {', '.join(strange) or 'none'}; missing: {', '.join(missing) or 'none'}",
         )
 
 
 def _row(file: str, number: int, cells: Mapping[str, str], row_type: type[RowT]) -> RowT:
     hints = get_type_hints(row_type)
-    values: dict[str, Any] = {name: _value(file, number, name, cell, hints[name]) for name, cell in cells.items()}
+    values: dict[str, Any] = {
+        name: _value(file, number, name, cell, hints[name]) for name, cell in cells.items()
+    }
     row = row_type(**values)
     for name, cell in cells.items():
         if name.endswith("status") and cell not in STATUS_WORDS:
@@ -116,12 +138,17 @@ def _with_source(
     file: str, number: int, row: RowT, cells: Mapping[str, str], sources: Mapping[str, Source]
 ) -> RowT:
     """The row with its sources in words; raises ``TableFault`` when one is not in the table of sources."""
-    keys = dict.fromkeys(cell for name, cell in cells.items() if name.endswith("source_key"))
-    for key in keys:
+    told: dict[str, list[str]] = {}
+    for name, key in cells.items():
+        if not name.endswith("source_key"):
+            continue
+        status = cells[name.removesuffix("source_key") + "status"]
         if key not in sources:
             raise TableFault(file, number, f"source {key!r} is not in sources.csv")
-    if ESTIMATE in keys and not cells["note"]:
-        raise TableFault(file, number, "an estimate gives its reasoning in the note")
-    weakest = max((cell for name, cell in cells.items() if name.endswith("status")), key=STATUS_WORDS.index)
-    text = f"{'; '.join(source_text(sources[key]) for key in keys)} ({weakest})"
+        if ESTIMATE in (key, status) and not cells["note"]:
+            raise TableFault(file, number, "an estimate gives its reasoning in the note")
+        known = told.setdefault(source_text(sources[key]), [])
+        if status not in known:
+            known.append(status)
+    text = "; ".join(f"{document} ({', '.join(known)})" for document, known in told.items())
     return replace(row, source_text=text)  # type: ignore[type-var]

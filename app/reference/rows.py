@@ -1,8 +1,7 @@
-"""What one row of each reference table holds, and what is plausible in it.
+"""What one row of each reference table holds, and what is wrong with a row as a whole.
 
 A field of a dataclass is a column of its table, in the same name and unit; ``source_text`` is filled in from
-the table of sources. ``faults`` says in words what is wrong with a row as a whole; ``BOUNDS`` holds the range
-of every column of numbers. Called by ``reading``.
+the table of sources. ``faults`` says in words what does not fit together in a row. Called by ``reading``.
 """
 
 from __future__ import annotations
@@ -11,85 +10,15 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 from typing import Literal
 
-STATUS_WORDS = ("published", "computed", "common practice", "from memory", "estimate")
-"""How a value is known, the strongest first. "From memory": check the printed document before quoting it."""
-
-Range = tuple[float, float]
-
-BOUNDS: dict[str, Range] = {
-    "density_kg_per_m3": (5.0, 9500.0),
-    "specific_heat_j_per_kg_k": (300.0, 2800.0),
-    "conductivity_w_per_m_k": (0.002, 450.0),
-    "conductivity_low_w_per_m_k": (0.002, 450.0),
-    "conductivity_high_w_per_m_k": (0.002, 450.0),
-    "water_fraction": (0.02, 0.98),
-    "protein_fraction": (0.0, 0.5),
-    "fat_fraction": (0.0, 0.9),
-    "carbohydrate_fraction": (0.0, 0.9),
-    "fibre_fraction": (0.0, 0.3),
-    "ash_fraction": (0.0, 0.1),
-    "initial_freezing_c": (-20.0, -0.1),
-    "handbook_specific_heat_above_j_per_kg_k": (2000.0, 4200.0),
-    "handbook_specific_heat_below_j_per_kg_k": (1300.0, 3200.0),
-    "handbook_latent_j_per_kg": (50e3, 330e3),
-    "melting_c": (-60.0, 40.0),
-    "melting_range_k": (0.0, 10.0),
-    "latent_j_per_kg": (80e3, 340e3),
-    "latent_low_j_per_kg": (80e3, 340e3),
-    "latent_high_j_per_kg": (80e3, 340e3),
-    "specific_heat_solid_j_per_kg_k": (1200.0, 2500.0),
-    "specific_heat_liquid_j_per_kg_k": (1800.0, 4300.0),
-    "conductivity_solid_w_per_m_k": (0.1, 2.5),
-    "conductivity_liquid_w_per_m_k": (0.1, 0.7),
-    "temperature_c": (-100.0, 40.0),
-    "longer_than_h": (0.0, 168.0),
-    "window_h": (0.0, 8760.0),
-    "leak_l_per_s_m": (0.001, 10.0),
-    "leak_low_l_per_s_m": (0.001, 10.0),
-    "leak_high_l_per_s_m": (0.001, 10.0),
-    "u_w_per_m2_k": (0.1, 7.0),
-    "u_low_w_per_m2_k": (0.1, 7.0),
-    "u_high_w_per_m2_k": (0.1, 7.0),
-}
-"""Lowest and highest plausible number of each column."""
-
-
-@dataclass(frozen=True)
-class MaterialClass:
-    """What is plausible in one group of materials: a decimal point that slipped fails at load."""
-
-    density_kg_per_m3: Range
-    specific_heat_j_per_kg_k: Range
-    conductivity_w_per_m_k: Range
-
-
-MATERIAL_CLASSES = {
-    "insulation": MaterialClass((5.0, 400.0), (600.0, 2200.0), (0.002, 0.12)),
-    "metal": MaterialClass((2000.0, 9500.0), (300.0, 1000.0), (10.0, 450.0)),
-    "structure": MaterialClass((300.0, 2800.0), (600.0, 2000.0), (0.05, 3.5)),
-    "glass": MaterialClass((2000.0, 3000.0), (600.0, 1000.0), (0.5, 1.5)),
-    "plastic": MaterialClass((850.0, 2100.0), (800.0, 2600.0), (0.1, 0.6)),
-    "packaging": MaterialClass((100.0, 1300.0), (1000.0, 2600.0), (0.03, 0.3)),
-    "ground": MaterialClass((1000.0, 3000.0), (600.0, 2500.0), (0.2, 5.0)),
-}
-
-FOOD_GROUPS = (
-    "vegetables",
-    "fruit",
-    "fish",
-    "meat",
-    "poultry",
-    "eggs",
-    "dairy",
-    "drinks",
-    "bakery",
-    "test load",
+from app.reference.bounds import (
+    COOLANT_KINDS,
+    FOOD_GROUPS,
+    JUDGED_ON,
+    LIMIT_GROUPS,
+    LIMIT_KINDS,
+    MATERIAL_CLASSES,
+    POINTS,
 )
-LIMIT_GROUPS = ("food", "vaccine", "blood", "pharmacy", "laboratory")
-COOLANT_KINDS = ("water_ice", "eutectic", "phase_change")
-LIMIT_KINDS = ("above", "below", "mean_kinetic")
-POINTS = ("warmest", "mean", "coldest")
-JUDGED_ON = ("contents", "air")
 
 
 @dataclass(frozen=True)
@@ -157,6 +86,7 @@ class Material:
 class Food:
     """Composition and freezing point of a food; carbohydrate is without fibre.
 
+    Status and source are those of the composition; those of the freezing point are named freezing.
     The handbook's own specific and latent heats serve checks only; none where the handbook has none to trust.
     """
 
@@ -173,9 +103,9 @@ class Food:
     handbook_specific_heat_above_j_per_kg_k: float | None
     handbook_specific_heat_below_j_per_kg_k: float | None
     handbook_latent_j_per_kg: float | None
-    composition_status: str
-    freezing_status: str
+    status: str
     source_key: str
+    freezing_status: str
     freezing_source_key: str
     note: str
     source_text: str = ""
