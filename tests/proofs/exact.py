@@ -22,7 +22,9 @@ def ramp_c(time_s: float, *, time_constant_s: float, start_c: float, room_c: flo
     return room_c + room_k_per_s * time_s - lag_k + left
 
 
-def day_c(time_s: float, *, time_constant_s: float, start_c: float, mean_c: float, swing_k: float, period_s: float) -> float:
+def day_c(
+    time_s: float, *, time_constant_s: float, start_c: float, mean_c: float, swing_k: float, period_s: float
+) -> float:
     """A lump in surroundings ``mean + swing cos(w t)``, from its start on."""
     w = 2.0 * math.pi / period_s
     x = w * time_constant_s
@@ -38,8 +40,14 @@ def power_film_c(time_s: float, *, start_c: float, room_c: float, first_rate_per
 
 
 def two_bodies_c(
-    time_s: float, *, air_j_per_k: float, product_j_per_k: float, wall_w_per_k: float, film_w_per_k: float,
-    start_c: float, room_c: float,
+    time_s: float,
+    *,
+    air_j_per_k: float,
+    product_j_per_k: float,
+    wall_w_per_k: float,
+    film_w_per_k: float,
+    start_c: float,
+    room_c: float,
 ) -> tuple[float, float]:
     """Air and a product in it, by the exponential of the 2 x 2 matrix."""
     rates = np.array(
@@ -87,8 +95,11 @@ class Neumann:
         """lambda of ``X = 2 lambda sqrt(a1 t)``."""
         stefan = self.specific_heat_1 * abs(self.melting_c - self.wall_c) / self.latent_j_per_kg
         spread = math.sqrt(self.diffusivity_1 / self.diffusivity_2)
-        other = self.conductivity_2 / self.conductivity_1 * spread * abs(
-            (self.start_c - self.melting_c) / (self.melting_c - self.wall_c)
+        other = (
+            self.conductivity_2
+            / self.conductivity_1
+            * spread
+            * abs((self.start_c - self.melting_c) / (self.melting_c - self.wall_c))
         )
 
         def balance(z: float) -> float:

@@ -1,4 +1,4 @@
-"""Ground and thick bodies as half-spaces: worked examples (Incropera, Cengel, Geankoplis) and ISO penetration depths."""
+"""Ground and thick bodies as half-spaces: worked examples (Incropera, Cengel, Geankoplis), ISO depths of swings."""
 
 import math
 
@@ -73,9 +73,7 @@ def test_copper_slab_under_constant_flux():
 def test_depth_that_the_year_reaches(name):
     # Source: ISO 13370:2007, Annex H (from memory)
     given, expected = case(name)
-    depth = penetration_depth_m(
-        diffusivity_m2_per_s=given["lambda"] / given["rho_c"], period_s=given["period_s"]
-    )
+    depth = penetration_depth_m(diffusivity_m2_per_s=given["lambda"] / given["rho_c"], period_s=given["period_s"])
     assert depth == pytest.approx(expected["delta_m"], rel=1e-9)
     assert round(depth, 1) == printed(name)["delta_m"]
 

@@ -92,9 +92,7 @@ def test_panel_that_cures_and_cools():
         time_s = 0.0
         for i in range(steps):
             middle_c = start_c + (end_c - start_c) * (i + 0.5) / steps
-            radiation = radiation_film_w_per_m2_k(
-                surface_c=middle_c, surroundings_c=room_c, emissivity=given["eps"]
-            )
+            radiation = radiation_film_w_per_m2_k(surface_c=middle_c, surroundings_c=room_c, emissivity=given["eps"])
             time_s += capacity * (end_c - start_c) / steps / ((film + radiation) * (room_c - middle_c))
         return time_s
 
@@ -113,9 +111,7 @@ def test_film_that_stands_for_a_body_with_an_inside(shape, key):
     given, expected = case("T2-EFFCAP")
     surface_per_volume = {"slab": 1.0, "cylinder": 2.0, "sphere": 3.0}[shape]
     for biot, rate in zip(given["Bi"], expected[f"{key}_corrected"], strict=True):
-        film = effective_film_w_per_m2_k(
-            film_w_per_m2_k=biot, length_m=1.0, conductivity_w_per_m_k=1.0, shape=shape
-        )
+        film = effective_film_w_per_m2_k(film_w_per_m2_k=biot, length_m=1.0, conductivity_w_per_m_k=1.0, shape=shape)
         assert surface_per_volume * film == pytest.approx(rate, rel=EXACT)
         exact = series_coefficients(shape=shape, biot=biot, terms=1)[0][0] ** 2
         # the correction is exact to first order in the Biot number: at 1 it is 1.3 to 1.5 % off, at 2 about 4 %
@@ -148,8 +144,12 @@ def test_day_swing_of_a_lump():
     assert hours_from_seconds(lag_s) == pytest.approx(expected["lag_h"], rel=EXACT)
     for hours in (12, 24, 48):
         at_c = day_c(
-            seconds_from_hours(hours), time_constant_s=tau_s, start_c=given["T0"], mean_c=given["Tm"],
-            swing_k=given["A"], period_s=period_s,
+            seconds_from_hours(hours),
+            time_constant_s=tau_s,
+            start_c=given["T0"],
+            mean_c=given["Tm"],
+            swing_k=given["A"],
+            period_s=period_s,
         )
         assert at_c == pytest.approx(expected[f"T_{hours}h"], rel=EXACT)
 
@@ -169,8 +169,11 @@ def test_film_that_goes_with_the_fourth_root():
     given, expected = case("T10-NATCONV")
     for hours in (4, 12):
         at_c = power_film_c(
-            seconds_from_hours(hours), start_c=given["T0"], room_c=given["Ta"],
-            first_rate_per_s=given["h_i"] * given["A"] / given["C"], power=given["n"],
+            seconds_from_hours(hours),
+            start_c=given["T0"],
+            room_c=given["Ta"],
+            first_rate_per_s=given["h_i"] * given["A"] / given["C"],
+            power=given["n"],
         )
         assert at_c == pytest.approx(expected[f"T_{hours}h"], rel=EXACT)
 
@@ -180,8 +183,12 @@ def test_air_and_a_product():
     given, expected = case("T10-TWONODE")
     for hours in (1, 12):
         air_c, product_c = two_bodies_c(
-            seconds_from_hours(hours), air_j_per_k=given["C_air"], product_j_per_k=given["C_prod"],
-            wall_w_per_k=given["G_amb_air"], film_w_per_k=given["G_air_prod"], start_c=given["T0"],
+            seconds_from_hours(hours),
+            air_j_per_k=given["C_air"],
+            product_j_per_k=given["C_prod"],
+            wall_w_per_k=given["G_amb_air"],
+            film_w_per_k=given["G_air_prod"],
+            start_c=given["T0"],
             room_c=given["Ta"],
         )
         assert air_c == pytest.approx(expected[f"T_air_{hours}h"], rel=EXACT)
@@ -193,8 +200,14 @@ def test_contents_behind_a_wall(name):
     # Source: series of the wall with a lumped content (computed)
     given, expected = case(name)
     wall = WallWithContents(
-        given["k"], given["rho"], given["c"], given["L"], given["h_o"], given["C_content_per_m2"],
-        given["T0_content"], given["Ta"],
+        given["k"],
+        given["rho"],
+        given["c"],
+        given["L"],
+        given["h_o"],
+        given["C_content_per_m2"],
+        given["T0_content"],
+        given["Ta"],
     )
     assert wall.biot == pytest.approx(expected["Bi"], rel=EXACT)
     assert wall.roots(1)[0] == pytest.approx(expected["mu1"], rel=EXACT)

@@ -98,9 +98,7 @@ def test_warm_duct():
     sides = laminar_plate_nusselt(at_one_metre * height**3, given["Pr"]) * given["k"] / height
     top = stirring_plate_nusselt(at_one_metre * half**3) * given["k"] / half
     under = still_plate_nusselt(at_one_metre * half**3) * given["k"] / half
-    assert [sides, top, under] == pytest.approx(
-        [expected["h_side"], expected["h_top"], expected["h_bottom"]], rel=1e-6
-    )
+    assert [sides, top, under] == pytest.approx([expected["h_side"], expected["h_top"], expected["h_bottom"]], rel=1e-6)
     per_metre_w = (2 * sides * height + (top + under) * given["W"]) * (given["Ts"] - given["Tinf"])
     assert per_metre_w == pytest.approx(printed("T8-INC9.3")["q_W_m"], abs=0.5)
 
@@ -109,8 +107,7 @@ def test_radiation_between_equal_temperatures():
     # Source: 4 eps sigma T³ (computed)
     given, expected = case("T8-HR")
     found = [
-        radiation_film_w_per_m2_k(surface_c=at_c, surroundings_c=at_c, emissivity=given["eps"])
-        for at_c in given["T"]
+        radiation_film_w_per_m2_k(surface_c=at_c, surroundings_c=at_c, emissivity=given["eps"]) for at_c in given["T"]
     ]
     assert found == pytest.approx(expected["h_r"], rel=1e-9)
 
@@ -165,16 +162,32 @@ def _direct_film(relation, length_m: float, surface_c: float, air_c: float) -> f
     return relation(rayleigh, viscosity * heat / conductivity) * conductivity / length_m
 
 
+def _upright(size: float, at_c: float) -> FilmLaw:
+    return vertical_plate_law(height_m=size, reference_c=at_c)
+
+
+def _round(size: float, at_c: float) -> FilmLaw:
+    return horizontal_cylinder_law(diameter_m=size, reference_c=at_c)
+
+
+def _still(size: float, at_c: float) -> FilmLaw:
+    return still_plate_law(area_over_perimeter_m=size, reference_c=at_c)
+
+
+def _stirring(size: float, at_c: float) -> FilmLaw:
+    return stirring_plate_law(area_over_perimeter_m=size, reference_c=at_c)
+
+
 LAWS = [
-    (vertical_plate_nusselt, lambda size, at: vertical_plate_law(height_m=size, reference_c=at), 0.05),
-    (vertical_plate_nusselt, lambda size, at: vertical_plate_law(height_m=size, reference_c=at), 0.3),
-    (vertical_plate_nusselt, lambda size, at: vertical_plate_law(height_m=size, reference_c=at), 3.0),
-    (horizontal_cylinder_nusselt, lambda size, at: horizontal_cylinder_law(diameter_m=size, reference_c=at), 0.02),
-    (horizontal_cylinder_nusselt, lambda size, at: horizontal_cylinder_law(diameter_m=size, reference_c=at), 0.5),
-    (lambda ra, _: still_plate_nusselt(ra), lambda size, at: still_plate_law(area_over_perimeter_m=size, reference_c=at), 0.5),
-    (lambda ra, _: stirring_plate_nusselt(ra), lambda size, at: stirring_plate_law(area_over_perimeter_m=size, reference_c=at), 0.06),
-    (lambda ra, _: stirring_plate_nusselt(ra), lambda size, at: stirring_plate_law(area_over_perimeter_m=size, reference_c=at), 1.0),
-]  # fmt: skip
+    (vertical_plate_nusselt, _upright, 0.05),
+    (vertical_plate_nusselt, _upright, 0.3),
+    (vertical_plate_nusselt, _upright, 3.0),
+    (horizontal_cylinder_nusselt, _round, 0.02),
+    (horizontal_cylinder_nusselt, _round, 0.5),
+    (lambda rayleigh, _: still_plate_nusselt(rayleigh), _still, 0.5),
+    (lambda rayleigh, _: stirring_plate_nusselt(rayleigh), _stirring, 0.06),
+    (lambda rayleigh, _: stirring_plate_nusselt(rayleigh), _stirring, 1.0),
+]
 
 
 @pytest.mark.parametrize(("relation", "law_of", "size"), LAWS)
