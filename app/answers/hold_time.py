@@ -26,7 +26,7 @@ from app.answers.answer import (
 )
 from app.answers.cautions import cautions_for
 from app.answers.hand_check import hand_check
-from app.answers.limits_kept import USUAL_ACTIVATION_KJ_PER_MOL, PlainLimit, judged, plain_limits
+from app.answers.limits_kept import AIR, USUAL_ACTIVATION_KJ_PER_MOL, PlainLimit, judged, plain_limits
 from app.engine import ENGINE_VERSION, MeanKinetic, Run, Trace, march, passed_above
 from app.engine.histories import pieces_of, temperature_c
 from app.engine.network import MEAN, MELTED, SOLID_LEFT, WARMEST
@@ -56,7 +56,7 @@ def hold_time(definition: StoreDefinition, *, confidence: float = 0.9, series_st
     store = store_network(definition)
     horizon_h = definition.outage.horizon_h
     run = march(store.network, seconds_from_hours(horizon_h))
-    by_item = [_judge_item(run, item) for item in store.items]
+    by_item = [_judge_item(run, item, store.air_column) for item in store.items]
     air = [
         _Judged(plain, judged(plain, lambda _: _trace(run, store.air_column)))
         for limit in store.air_limits
@@ -93,9 +93,9 @@ def _trace(run: Run, column: int) -> Trace:
     return Trace(run.trace_s, run.traces[:, column])
 
 
-def _judge_item(run: Run, item: PlacedItem) -> list[_Judged]:
+def _judge_item(run: Run, item: PlacedItem, air_column: int) -> list[_Judged]:
     def trace_of(quantity: int) -> Trace:
-        return _trace(run, item.columns[quantity])
+        return _trace(run, air_column if quantity == AIR else item.columns[quantity])
 
     plains = [plain for limit in item.limits for plain in plain_limits(limit)]
     return [_Judged(plain, judged(plain, trace_of)) for plain in plains]

@@ -11,11 +11,14 @@ from dataclasses import dataclass
 
 from app.answers.answer import LimitAnswer, Status
 from app.engine import MeanKinetic, Passed, Trace, passed_above, passed_below
-from app.engine.network import COLDEST, MEAN, MELTED, WARMEST
+from app.engine.network import BODY_TEMPERATURE, COLDEST, MEAN, MELTED, WARMEST
 from app.reference import PresetLimit, limit_preset
 from app.stores import Limit
 from app.stores.definition import AboveLimit, BelowLimit, MeanKineticLimit
 from app.units import hours_from_seconds, seconds_from_hours
+
+AIR = BODY_TEMPERATURE
+"""Quantity of a limit that is judged on the air, whatever it belongs to."""
 
 _JUDGED = (AboveLimit, BelowLimit, MeanKineticLimit, PresetLimit)
 
@@ -63,14 +66,15 @@ def _plain(limit: Limit | PresetLimit, source: str | None) -> PlainLimit:
         text = f"mean kinetic temperature over {limit.window_h:g} h above {limit.temperature_c:g} °C"
     if longer_h > 0.0:
         text += f" for longer than {longer_h:g} h"
+    on_air = getattr(limit, "on", "contents") == "air"
     return PlainLimit(
         kind=limit.kind,
-        quantity=_POINTS[limit.at],
+        quantity=AIR if on_air else _POINTS[limit.at],
         level=limit.temperature_c,
         longer_than_h=longer_h,
         window_h=getattr(limit, "window_h", 0.0),
         activation_kj_per_mol=getattr(limit, "activation_kj_per_mol", USUAL_ACTIVATION_KJ_PER_MOL),
-        text=f"{text}, {limit.at} point",
+        text=f"{text}, air" if on_air else f"{text}, {limit.at} point",
         source=source,
     )
 
