@@ -1,8 +1,8 @@
 """Foods against the handbook's table, its worked examples, and enthalpies worked out from Chen's relation.
 
 Source of all, unless a test names another: ASHRAE Handbook Refrigeration 2006, ch. 9 (chapter 19 in editions from
-2010). ``handbook_foods.csv`` gives its Table 3 with the status of each row: some compositions are from memory,
-checked against the heat of fusion and the specific heat that the table prints.
+2010). Its Table 3 is looked up in the reference tables, where each row says how it is known: some compositions are
+from memory, checked against the heat of fusion and the specific heat that the table prints.
 """
 
 from __future__ import annotations
@@ -28,76 +28,83 @@ from app.physics.foods import (
     specific_heat_j_per_kg_k,
 )
 from app.physics.freezing import ice_fraction, ice_fraction_by_tchigeov, usual_freezing_c
+from app.reference import food, foods
 
-MISPRINTED = {"Chicken"}
-"""4.34 and 3.32 kJ/kg·K are printed for chicken; its composition gives 3.43, and Chen's relation 2.32."""
-
-FILLED_IN = {"Mozzarella", "Butter"}
+FILLED_IN = {"mozzarella", "butter"}
 """Freezing point blank in the handbook: the specific heat at -40 °C that hangs on it proves nothing."""
 
-with Path(__file__).with_name("handbook_foods.csv").open(encoding="utf-8", newline="") as table:
-    ROWS = list(csv.DictReader(table))
+ABOVE = [row for row in foods() if row.handbook_specific_heat_above_j_per_kg_k]
+BELOW = [row for row in foods() if row.handbook_specific_heat_below_j_per_kg_k and row.key not in FILLED_IN]
+LATENT = [row for row in foods() if row.handbook_latent_j_per_kg]
 
 
-def composition_of(row: dict[str, str], *, fibre_twice: bool = False) -> Composition:
-    parts = {name: float(row[f"{name}_percent"]) / 100.0 for name in ("water", "protein", "fat", "fibre", "ash")}
-    with_fibre = float(row["carbohydrate_and_fibre_percent"]) / 100.0
-    return Composition(carbohydrate=with_fibre - (0.0 if fibre_twice else parts["fibre"]), **parts)
+def composition_of(row) -> Composition:
+    return Composition(
+        water=row.water_fraction,
+        protein=row.protein_fraction,
+        fat=row.fat_fraction,
+        carbohydrate=row.carbohydrate_fraction,
+        fibre=row.fibre_fraction,
+        ash=row.ash_fraction,
+    )
 
 
-def named(row: dict[str, str]) -> str:
-    return row["product"]
+def named(row) -> str:
+    return row.key
 
 
-@pytest.mark.parametrize("row", ROWS, ids=named)
+def test_there_are_enough_foods_to_compare():
+    assert min(len(ABOVE), len(BELOW), len(LATENT)) >= 45
+
+
+@pytest.mark.parametrize("row", ABOVE, ids=named)
 def test_specific_heat_above_freezing(row):
-    printed = float(row["specific_heat_above_kj_per_kg_k"])
-    composition = composition_of(row)
-    found = specific_heat_j_per_kg_k(composition, 5.0) / 1000.0
-    if row["product"] in MISPRINTED:
-        assert printed - found == pytest.approx(0.91, abs=0.01)
-        return
+    found = specific_heat_j_per_kg_k(composition_of(row), 5.0)
+    printed = row.handbook_specific_heat_above_j_per_kg_k
     # The table looks as if fibre had been counted twice, in the carbohydrate and by itself: with that, and for
-    # compositions that do not add up, all rows come within 0.045; without it plants lie up to 0.09 below.
-    assert found + 1.85 * composition.fibre == pytest.approx(printed, abs=0.045)
-    assert found < printed + 0.045
+    # compositions that do not add up, all rows come within 45 J/kg·K; without it plants lie up to 90 below.
+    assert found + 1850.0 * row.fibre_fraction == pytest.approx(printed, abs=45.0)
+    assert found < printed + 45.0
 
 
-@pytest.mark.parametrize("row", [row for row in ROWS if row["product"] not in FILLED_IN | MISPRINTED], ids=named)
+@pytest.mark.parametrize("row", BELOW, ids=named)
 def test_specific_heat_below_freezing_is_chens_at_minus_40(row):
-    printed = float(row["specific_heat_below_kj_per_kg_k"])
-    composition = composition_of(row)
-    curve = food_curve(composition, initial_freezing_c=float(row["initial_freezing_c"]))
-    found = 1.0 / curve.segments[1].slope_k_per_j(-40.0) / 1000.0
-    # fibre counted twice again, as 1.26 kJ/kg·K of solids
-    assert found + 1.26 * composition.fibre == pytest.approx(printed, abs=0.04)
+    curve = food_curve(composition_of(row), initial_freezing_c=row.initial_freezing_c)
+    found = 1.0 / curve.segments[1].slope_k_per_j(-40.0)
+    # fibre counted twice again, as 1260 J/kg·K of solids
+    assert found + 1260.0 * row.fibre_fraction == pytest.approx(row.handbook_specific_heat_below_j_per_kg_k, abs=40.0)
 
 
-def test_misprint_of_chicken_below_freezing():
-    row = next(row for row in ROWS if row["product"] == "Chicken")
-    curve = food_curve(composition_of(row), initial_freezing_c=-2.8)
-    assert 1.0 / curve.segments[1].slope_k_per_j(-40.0) / 1000.0 == pytest.approx(2.32, abs=0.005)
+def test_misprint_of_chicken():
+    # 4.34 and 3.32 kJ/kg·K are printed; its composition gives 3.43, and Chen's relation 2.32
+    chicken = food("chicken")
+    curve = food_curve(composition_of(chicken), initial_freezing_c=chicken.initial_freezing_c)
+    assert specific_heat_j_per_kg_k(composition_of(chicken), 5.0) == pytest.approx(3430.0, abs=5.0)
+    assert 1.0 / curve.segments[1].slope_k_per_j(-40.0) == pytest.approx(2320.0, abs=5.0)
 
 
-@pytest.mark.parametrize("row", ROWS, ids=named)
+@pytest.mark.parametrize("row", LATENT, ids=named)
 def test_heat_of_fusion_is_that_of_all_the_water(row):
-    found = composition_of(row).water * LATENT_HEAT_OF_WATER_J_PER_KG / 1000.0
-    assert found == pytest.approx(float(row["latent_kj_per_kg"]), abs=1.0)  # printed without decimals
+    found = row.water_fraction * LATENT_HEAT_OF_WATER_J_PER_KG
+    assert found == pytest.approx(row.handbook_latent_j_per_kg, abs=1000.0)  # printed in whole kJ/kg
 
 
-@pytest.mark.parametrize("row", ROWS, ids=named)
+@pytest.mark.parametrize("row", ABOVE, ids=named)
 def test_specific_heat_of_the_curve_above_freezing(row):
-    if row["product"] in MISPRINTED:
-        return
-    water = float(row["water_percent"]) / 100.0
-    begins_c = -2.0 if row["initial_freezing_c"] == "NA" else float(row["initial_freezing_c"])
-    curve = food_curve(composition_of(row), initial_freezing_c=begins_c)
-    found = curve.segments[2].capacity_j_per_kg_k / 1000.0
-    printed = float(row["specific_heat_above_kj_per_kg_k"])
+    curve = food_curve(composition_of(row), initial_freezing_c=row.initial_freezing_c)
+    found = curve.segments[2].capacity_j_per_kg_k
     # Chen's relation for above freezing is for lean, watery foods: 2.5 % there, low for fat and dry ones
-    allowed = 0.025 if water > 0.6 else 0.08 if water > 0.3 else 0.20
-    assert found == pytest.approx(printed, rel=allowed)
-    assert found < printed * 1.015
+    allowed = 0.025 if row.water_fraction > 0.6 else 0.08 if row.water_fraction > 0.3 else 0.20
+    assert found == pytest.approx(row.handbook_specific_heat_above_j_per_kg_k, rel=allowed)
+    assert found < 1.015 * row.handbook_specific_heat_above_j_per_kg_k
+
+
+@pytest.mark.parametrize("row", foods(), ids=named)
+def test_every_food_has_a_curve(row):
+    curve = food_curve(composition_of(row), initial_freezing_c=row.initial_freezing_c)
+    assert curve.temperature_c(curve.enthalpy_j_per_kg(-18.0)) == pytest.approx(-18.0)
+    assert 0.15 < curve.conductivity_liquid_w_per_m_k < curve.conductivity_solid_w_per_m_k < 2.5
+    assert 900.0 < curve.density_kg_per_m3 < 1400.0
 
 
 def _enthalpies() -> dict[str, tuple[float, float, float, dict[float, float]]]:
@@ -160,7 +167,7 @@ def test_ice_at_minus_18_by_two_relations(name, tchigeov, raoult):
 
 def test_lamb_cooled_before_freezing():
     # Source: Example 2 of ch. 9 (from memory): 150 kg of lean lamb from 10 to 0 °C, 3.59 kJ/kg·K, about 5390 kJ
-    lamb = composition_of(next(row for row in ROWS if row["product"].startswith("Lamb")))
+    lamb = composition_of(food("lamb"))
     heat = specific_heat_j_per_kg_k(lamb, 5.0)
     assert heat == pytest.approx(3590.0, abs=5.0)
     assert 150.0 * heat * 10.0 == pytest.approx(5.390e6, rel=0.002)
@@ -168,7 +175,7 @@ def test_lamb_cooled_before_freezing():
 
 def test_pork_shoulder_at_minus_40():
     # Source: conditions of Example 4 of ch. 9; values computed: 0.6715 ice, 1.96 and 0.52 W/m·K, 992 kg/m³
-    pork = composition_of(next(row for row in ROWS if row["product"].startswith("Pork")))
+    pork = composition_of(food("pork_shoulder"))
     ice = ice_fraction_by_tchigeov(water=pork.water, initial_freezing_c=-2.2, temperature_c=-40.0)
     assert ice == pytest.approx(0.6715, abs=0.0001)
     along, across = conductivity_bounds_w_per_m_k(pork, ice, -40.0)
@@ -189,12 +196,10 @@ def test_components_at_5_degrees():
 
 def test_products_from_their_composition_alone():
     # Source: ch. 9, Table 3: milk, cod, egg, shrimp, lamb (computed values match it)
-    expected = {"Milk, whole": 3.89, "Cod": 3.78, "Egg, whole": 3.63, "Shrimp": 3.64, "Lamb, lean composite": 3.59}
-    for row in ROWS:
-        if row["product"] in expected:
-            found = specific_heat_j_per_kg_k(composition_of(row), 5.0) / 1000.0
-            # cod adds up to 100.86 %: scaled, it is 0.02 lower
-            assert found == pytest.approx(expected[row["product"]], abs=0.022)
+    expected = {"milk_whole": 3890.0, "cod": 3780.0, "egg_whole": 3630.0, "shrimp": 3640.0, "lamb": 3590.0}
+    for key, heat in expected.items():
+        # cod adds up to 100.86 %: scaled, it is 20 J/kg·K lower
+        assert specific_heat_j_per_kg_k(composition_of(food(key)), 5.0) == pytest.approx(heat, abs=22.0)
 
 
 def test_freezing_meat_over_its_curve_and_as_lumps():
@@ -233,12 +238,11 @@ def test_water_and_ice_of_food_against_reference_water():
 
 @pytest.mark.parametrize(
     ("product", "at_c", "measured"),
-    [("Beef sirloin, lean", 5.0, 0.48), ("Beef sirloin, lean", -15.0, 1.35), ("Cod", 3.0, 0.53), ("Cod", -15.0, 1.46)],
+    [("beef_lean", 5.0, 0.48), ("beef_lean", -15.0, 1.35), ("cod", 3.0, 0.53), ("cod", -15.0, 1.46)],
 )
 def test_conductivity_of_lean_meat_and_fish(product, at_c, measured):
     # Source: Lentz (1961), Food Technology 15:243, as handbooks tabulate it (from memory)
-    row = next(row for row in ROWS if row["product"] == product)
-    composition, begins_c = composition_of(row), float(row["initial_freezing_c"])
+    composition, begins_c = composition_of(food(product)), food(product).initial_freezing_c
     free = composition.water - bound_water_fraction(composition)
     ice = ice_fraction(free_water=free, initial_freezing_c=begins_c, temperature_c=at_c)
     found = conductivity_w_per_m_k(composition, ice, at_c)
