@@ -44,7 +44,7 @@ class Trace:
 
     def __init__(self, times_s: Floats, values: Floats) -> None:
         self.starts_s = times_s[:-1:4]
-        self.lengths_s = times_s[4::4] - self.starts_s
+        self.lengths_s: Floats = times_s[4::4] - self.starts_s
         self.end_s = float(times_s[-1])
         steps = np.lib.stride_tricks.sliding_window_view(values, 5)[::4]
         self.powers: Floats = np.asarray(steps @ _TO_POWERS.T, dtype=np.float64)

@@ -122,7 +122,9 @@ def test_more_leak_never_keeps_it_colder(network, factor):
     leakier = network.boundaries.copy()
     leakier["conductance_w_per_k"] *= factor
     warm = march(replace(network, boundaries=leakier), 24 * HOUR_S).energies_j.sum()
-    assert warm >= march(network, 24 * HOUR_S).energies_j.sum() - 1e-6 * abs(warm) - 1.0
+    # near the end both are at the room's temperature, within the 0.01 K that a step of a load may be off
+    slack_j = 0.01 * 4200.0 * network.bodies["mass_kg"].sum()
+    assert warm >= march(network, 24 * HOUR_S).energies_j.sum() - slack_j
 
 
 @pytest.mark.parametrize("factor", [0.5, 2.0])
