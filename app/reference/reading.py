@@ -33,9 +33,7 @@ class _Row(Protocol):
 RowT = TypeVar("RowT", bound=_Row)
 
 
-def read_rows(
-    file: str, text: str, row_type: type[RowT], sources: Mapping[str, Source] | None
-) -> tuple[RowT, ...]:
+def read_rows(file: str, text: str, row_type: type[RowT], sources: Mapping[str, Source] | None) -> tuple[RowT, ...]:
     """Every row of a table, in its order; ``sources`` is None for the table of sources itself.
 
     Raises ``TableFault`` for the first fault.
@@ -59,9 +57,7 @@ def presets_of(file: str, rows: Iterable[LimitRow]) -> tuple[LimitPreset, ...]:
         names = (row.preset, row.label, row.group, row.body, row.document, row.edition)
         known = presets.setdefault(row.preset, LimitPreset(*names, limits=()))
         if (known.key, known.label, known.group, known.body, known.document, known.edition) != names:
-            raise TableFault(
-                file, number, f"label, group or document differ from the first row of {row.preset!r}"
-            )
+            raise TableFault(file, number, f"label, group or document differ from the first row of {row.preset!r}")
         shared = {field.name: getattr(row, field.name) for field in fields(PresetLimit)}
         presets[row.preset] = replace(known, limits=(*known.limits, PresetLimit(**shared)))
     return tuple(presets.values())
@@ -104,9 +100,7 @@ def _check_header(file: str, given: Iterable[str], wanted: list[str]) -> None:
 
 def _row(file: str, number: int, cells: Mapping[str, str], row_type: type[RowT]) -> RowT:
     hints = get_type_hints(row_type)
-    values: dict[str, Any] = {
-        name: _value(file, number, name, cell, hints[name]) for name, cell in cells.items()
-    }
+    values: dict[str, Any] = {name: _value(file, number, name, cell, hints[name]) for name, cell in cells.items()}
     row = row_type(**values)
     for name, cell in cells.items():
         if name.endswith("status") and cell not in STATUS_WORDS:
@@ -134,9 +128,7 @@ def _value(file: str, number: int, name: str, cell: str, kind: object) -> str | 
     return value
 
 
-def _with_source(
-    file: str, number: int, row: RowT, cells: Mapping[str, str], sources: Mapping[str, Source]
-) -> RowT:
+def _with_source(file: str, number: int, row: RowT, cells: Mapping[str, str], sources: Mapping[str, Source]) -> RowT:
     """The row with its sources in words; raises ``TableFault`` when one is not in the table of sources."""
     told: dict[str, list[str]] = {}
     for name, key in cells.items():

@@ -159,9 +159,7 @@ class CoolantMaterial:
     def faults(self) -> Iterator[str]:
         """What does not fit the kind, or together."""
         yield from _choice("kind", self.kind, COOLANT_KINDS)
-        yield from _spread(
-            "latent_j_per_kg", self.latent_low_j_per_kg, self.latent_j_per_kg, self.latent_high_j_per_kg
-        )
+        yield from _spread("latent_j_per_kg", self.latent_low_j_per_kg, self.latent_j_per_kg, self.latent_high_j_per_kg)
         if self.kind == "eutectic" and self.melting_c >= 0.0:
             yield f"a salt eutectic melts below 0 °C, not at {self.melting_c:g} °C"
 
@@ -256,9 +254,7 @@ class OpeningKind:
 
     def faults(self) -> Iterator[str]:
         """Values outside their own spread."""
-        yield from _spread(
-            "leak_l_per_s_m", self.leak_low_l_per_s_m, self.leak_l_per_s_m, self.leak_high_l_per_s_m
-        )
+        yield from _spread("leak_l_per_s_m", self.leak_low_l_per_s_m, self.leak_l_per_s_m, self.leak_high_l_per_s_m)
         yield from _spread("u_w_per_m2_k", self.u_low_w_per_m2_k, self.u_w_per_m2_k, self.u_high_w_per_m2_k)
 
 
