@@ -52,7 +52,7 @@ def read(file: str, text: str):
     return read_rows(file, text, TYPES[file], known)
 
 
-def test_the_helper_that_changes_a_table_leaves_the_rest_as_it_is():
+def test_changing_no_cell_of_a_table_leaves_the_rest_as_it_is():
     assert read("materials.csv", changed("materials.csv", 2)) == read("materials.csv", text_of("materials.csv"))
 
 

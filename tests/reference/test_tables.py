@@ -226,6 +226,19 @@ def test_no_salt_solution_stores_more_latent_heat_than_its_share_of_water_by_far
             assert row.latent_j_per_kg < 1.05 * (1.0 - salt) * WATER_LATENT_J_PER_KG, row.key
 
 
+def test_salt_solutions_without_measured_properties_follow_the_rules_in_their_notes():
+    by_rule = [row for row in coolant_materials() if row.note.endswith("salt.") and "density 1000" in row.note]
+    assert len(by_rule) >= 10
+    for row in by_rule:
+        salt = float(re.search(r"([\d.]+) %", row.label)[1]) / 100.0
+        # 5 J/kg·K, 5 kg/m³ and 0.005 W/m·K: the table is rounded to tens and to hundredths
+        assert row.density_kg_per_m3 == pytest.approx(1000 + 850 * salt, abs=5.0), row.key
+        assert row.specific_heat_liquid_j_per_kg_k == pytest.approx(4190 * (1 - salt), abs=5.0), row.key
+        assert row.specific_heat_solid_j_per_kg_k == pytest.approx(2000 - 700 * salt, abs=5.0), row.key
+        assert row.conductivity_solid_w_per_m_k == pytest.approx(2.2 - 2.0 * salt, abs=0.0051), row.key
+        assert row.conductivity_liquid_w_per_m_k == pytest.approx(0.57 - 0.37 * salt, abs=0.0051), row.key
+
+
 # Source: Melinder, Properties of Secondary Working Fluids, 2nd ed., at 10 °C (computed): salt share, specific heat
 @pytest.mark.parametrize(
     ("key", "salt", "heat"),
