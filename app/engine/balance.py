@@ -189,11 +189,10 @@ def linearise(bodies: Records, boundaries: Records, rows: Floats) -> None:
             flow = by_parent * difference
         own = by_own * rows[SLOPE, i]
         from_parent = by_parent * rows[SLOPE, parent]
-        if difference != 0.0:
-            # resistivity changes as ice melts: d flow / d resistance = -flow² / difference
-            square = flow * flow / difference
-            own -= square * body["near_path_per_m"] * rows[RESISTIVITY_SLOPE, i]
-            from_parent -= square * body["far_path_per_m"] * rows[RESISTIVITY_SLOPE, parent]
+        # resistivity changes as ice melts: d flow / d resistance = flow times d flow / d own temperature
+        change = flow * by_own
+        own += change * body["near_path_per_m"] * rows[RESISTIVITY_SLOPE, i]
+        from_parent += change * body["far_path_per_m"] * rows[RESISTIVITY_SLOPE, parent]
         rows[OWN, i] = own
         rows[FROM_PARENT, i] = from_parent
         rows[DIAGONAL, i] += own

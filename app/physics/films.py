@@ -23,6 +23,7 @@ from app.physics.walls import surface_resistance_m2_k_per_w as surface_resistanc
 from app.units import STEFAN_BOLTZMANN_W_PER_M2_K4, ZERO_CELSIUS_K
 
 _USUAL_DIFFERENCE_K = 5.0
+_SURFACE_ROUNDS = 4
 """Between surface and air in a store without power; where a law is fitted to the warmth of the film."""
 
 _LEAST_FILM_W_PER_M2_K = 1e-6
@@ -266,8 +267,7 @@ def film_flow_w(
 
     Notes
     -----
-    The film is taken at the difference between air and body: where much of it lies in the series resistance
-    it is a little high, so the body warms a little fast.
+    The film is taken at the surface itself, whose temperature follows from the balance of film and resistance.
 
     Examples
     --------
@@ -279,6 +279,35 @@ def film_flow_w(
     ----------
     ``FilmLaw`` and the exact law of radiation in series with a resistance.
     """
+    at_c = surface_c
+    flow, by_surface, by_air = _surface_flow_w(
+        at_c, air_c, area_m2, base, gain, is_sixth, reference_c, per_k, emissivity
+    )
+    if series_k_per_w <= 0.0:
+        return flow, by_surface, by_air
+    inward = 1.0 / series_k_per_w
+    for _ in range(_SURFACE_ROUNDS):
+        at_c -= (inward * (at_c - surface_c) - flow) / (inward - by_surface)
+        flow, by_surface, by_air = _surface_flow_w(
+            at_c, air_c, area_m2, base, gain, is_sixth, reference_c, per_k, emissivity
+        )
+    share = inward / (inward - by_surface)
+    return inward * (at_c - surface_c), share * by_surface, share * by_air
+
+
+@compiled
+def _surface_flow_w(
+    surface_c: float,
+    air_c: float,
+    area_m2: float,
+    base: float,
+    gain: float,
+    is_sixth: float,
+    reference_c: float,
+    per_k: float,
+    emissivity: float,
+) -> tuple[float, float, float]:
+    """Heat flow from still air into a surface, and its change with the two temperatures. [W, W/K, W/K]"""
     difference = air_c - surface_c
     size = abs(difference)
     if is_sixth > 0.0:
@@ -292,17 +321,11 @@ def film_flow_w(
     squares = one * one + two * two
     grey = STEFAN_BOLTZMANN_W_PER_M2_K4 * emissivity
     film = area_m2 * max(root * root * warmth + grey * squares * (one + two), _LEAST_FILM_W_PER_M2_K)
-    conductance = 1.0 / (1.0 / film + series_k_per_w)
-    share = conductance / film
     # difference times the change of the film with |difference|, and with each temperature
     steep = 2.0 * root * gain * rise * exponent * warmth
     by_surface = area_m2 * (-steep + difference * (bend + grey * (2.0 * one * (one + two) + squares)))
     by_air = area_m2 * (steep + difference * (bend + grey * (2.0 * two * (one + two) + squares)))
-    return (
-        conductance * difference,
-        -conductance + share * share * by_surface,
-        conductance + share * share * by_air,
-    )
+    return film * difference, -film + by_surface, film + by_air
 
 
 def _root_law(base: float, gain: float, prandtl_constant: float, length_m: float, reference_c: float) -> FilmLaw:
