@@ -1,7 +1,10 @@
 """Published relations, one a function, numbers in, numbers out.
 
-``enthalpy``, ``films``, ``foods``, ``melting``, ``conduction``, ``lumped`` and ``kinetic`` are modules of public
-functions and are imported by their own names; what the engine builds on stands here.
+The modules hold public functions and are imported by their own names; what the engine builds on stands here.
+
+``air``, ``convection`` and ``radiation`` lead to ``films``; ``components`` and ``freezing`` to ``foods``, which with
+``melting`` hands out curves of ``enthalpy``; ``conduction``, ``walls`` and ``transient`` are heat in solids; ``lumped``
+and ``kinetic`` serve the hand check and the limits.
 """
 
 from app.physics.enthalpy import (
