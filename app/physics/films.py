@@ -23,8 +23,10 @@ from app.physics.walls import surface_resistance_m2_k_per_w as surface_resistanc
 from app.units import STEFAN_BOLTZMANN_W_PER_M2_K4, ZERO_CELSIUS_K
 
 _USUAL_DIFFERENCE_K = 5.0
-_SURFACE_ROUNDS = 4
 """Between surface and air in a store without power; where a law is fitted to the warmth of the film."""
+
+_SURFACE_ROUNDS = 4
+"""Of Newton's method for a surface between film and resistance: 1e-7 of the flow up to ten times the film's."""
 
 _LEAST_FILM_W_PER_M2_K = 1e-6
 """Keeps a law without base or radiation above 0 where there is no difference."""
