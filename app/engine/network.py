@@ -10,7 +10,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 
 import numpy as np
 from numpy.typing import NDArray
@@ -214,6 +214,21 @@ def build_network(
         watches=np.array(watch_rows, dtype=WATCH),
         body_names=tuple(body.name for body in bodies),
         path_names=paths,
+        watch_names=tuple(watch.name for watch in watches),
+    )
+
+
+def with_mean_watches(network: Network, watches: Sequence[Watch], curve: EnthalpyCurve) -> Network:
+    """The same network with other watches: means of some bodies that share one curve."""
+    tables = _Tables([tuple(row) for row in network.segments])
+    rows = []
+    for watch in watches:
+        mass_kg = float(network.bodies["mass_kg"][watch.first_body : watch.last_body + 1].sum())
+        rows.append((MEAN, watch.first_body, watch.last_body, *tables.curve_rows(curve, mass_kg), 0.0))
+    return replace(
+        network,
+        segments=np.array(tables.segment_rows, dtype=SEGMENT),
+        watches=np.array(rows, dtype=WATCH),
         watch_names=tuple(watch.name for watch in watches),
     )
 

@@ -65,6 +65,11 @@ class Block:
         """Area of the surface in the air."""
         return self.area_at_m2(0.0)
 
+    def volume_share_outside(self, depth_m: float) -> float:
+        """Share of the volume that lies less deep than a depth."""
+        table = self._table()
+        return float(np.interp(depth_m, table.depth_m, table.outside_m3)) / float(table.outside_m3[-1])
+
     def shells(self, count: int) -> tuple[Shell, ...]:
         """The block cut into ``count`` layers, thin ones at the surface, outermost first."""
         if count == 1:
@@ -184,5 +189,5 @@ def _graded(count: int) -> np.ndarray:
     return np.concatenate([[0.0], np.cumsum(widths) / widths.sum()])
 
 
-_COARSEST = 4.0
+_COARSEST = 6.0
 """Thickness of the innermost layer against the outermost."""

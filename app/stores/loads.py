@@ -37,7 +37,7 @@ EMISSIVITY = 0.9
 LUMP_BIOT = 0.1
 """Below this Biot number one lump is right within a few per cent (Incropera, ch. 5)."""
 
-_SHELLS = ((0.3, 4), (1.0, 6), (4.0, 8), (math.inf, 10))
+_SHELLS = ((0.3, 8), (1.0, 12), (4.0, 14), (math.inf, 16))
 """Biot number up to which so many shells do; doubling them moves a hold time by less than 0.5 %."""
 
 _USUAL_DIFFERENCE_K = 5.0

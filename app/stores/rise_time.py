@@ -1,22 +1,23 @@
 """The heat leak that makes the model reproduce a temperature-rise time, as data sheets and tests state it.
 
 The store is filled with its test load and left to warm in the test's room; the heat leak is found with which
-the middle of the outermost package takes the stated time from one temperature to the other.
+the outer layer of packages, whose middle is what a test reads, takes the stated time from one temperature to
+the other.
 """
 
 from __future__ import annotations
 
 import math
-from dataclasses import replace
 
 import numpy as np
 from scipy.optimize import brentq
 
 from app.engine import Network, march
-from app.engine.network import BODY_TEMPERATURE, WATCH
+from app.engine.network import MEAN, Watch, with_mean_watches
 from app.errors import DefinitionRefused, FieldFault
 from app.stores.definition import RiseTime, StoreDefinition
-from app.stores.network_of import StoreNetwork, network_of
+from app.stores.loads import contents_block
+from app.stores.network_of import PlacedItem, StoreNetwork, network_of
 from app.stores.reading import definition_document, read_definition
 from app.units import seconds_from_hours
 
@@ -44,9 +45,9 @@ def heat_leak_of_rise_time_w_per_k(definition: StoreDefinition, overall: RiseTim
 
     def too_slow(log_leak: float) -> float:
         """Positive where the load is still colder than the end of the test at the stated time. [K]"""
-        network = _test_network(definition, overall, math.exp(log_leak))
-        run = march(network, wanted_s)
-        return overall.to_c.value - float(run.traces[-1, 0])
+        network, share = _test_network(definition, overall, math.exp(log_leak))
+        fewer_c, more_c = march(network, wanted_s).traces[-1]
+        return overall.to_c.value - float(fewer_c + share * (more_c - fewer_c))
 
     low, high = math.log(_LEAST_W_PER_K), math.log(_MOST_W_PER_K)
     if too_slow(low) < 0.0 or too_slow(high) > 0.0:
@@ -76,8 +77,8 @@ def _as_heat_leak(overall: RiseTime, leak_w_per_k: float) -> dict[str, object]:
     return known | {name: value.value for name, value in given.items() if value is not None}
 
 
-def _test_network(definition: StoreDefinition, overall: RiseTime, leak_w_per_k: float) -> Network:
-    """The store under the test's conditions, watched at the middle of its outermost packages."""
+def _test_network(definition: StoreDefinition, overall: RiseTime, leak_w_per_k: float) -> tuple[Network, float]:
+    """The store under the test's conditions, watched at two depths; a layer of packages lies a share between."""
     document = definition_document(definition)
     enclosure = document["enclosure"] | {"overall": _as_heat_leak(overall, leak_w_per_k)}
     mass_kg = overall.test_load_kg.value
@@ -107,6 +108,22 @@ def _test_network(definition: StoreDefinition, overall: RiseTime, leak_w_per_k: 
         }
     )
     store = network_of(test)
-    first = store.items[0].first_body
-    watch = np.array([(BODY_TEMPERATURE, first, first, 0, 0, 0.0)], dtype=WATCH)
-    return replace(store.network, watches=watch, watch_names=("outermost package",))
+    load = store.items[0]
+    count, share = _shells_of_outer_packages(test, load)
+    first = load.first_body
+    watches = [
+        Watch("fewer", MEAN, first, first + count - 1),
+        Watch("more", MEAN, first, min(first + count, first + len(load.load.bodies) - 1)),
+    ]
+    return with_mean_watches(store.network, watches, load.load.curve), share
+
+
+def _shells_of_outer_packages(test: StoreDefinition, load: PlacedItem) -> tuple[int, float]:
+    """Shells that make up one layer of packages, whose mean is the middle of a package: how many, and a rest."""
+    block = contents_block(test.contents[0])
+    layer = block.volume_share_outside(min(PACKAGE_M[2], block.half_thickness_m))
+    shares = np.cumsum([body.mass_kg for body in load.load.bodies]) / load.load.mass_kg
+    count = max(int(np.searchsorted(shares, layer)), 1)
+    if count >= len(shares):
+        return len(shares), 0.0
+    return count, float(np.clip((layer - shares[count - 1]) / (shares[count] - shares[count - 1]), 0.0, 1.0))
