@@ -2,26 +2,19 @@
 
 from __future__ import annotations
 
+import csv
+import io
+from collections.abc import Sequence
 from dataclasses import dataclass
 
-from app.answers import Answer, ItemAnswer, LimitAnswer
-from app.answers.wording import (
-    RANGE_NOTICE,
-    energy_text,
-    hold_text,
-    hours_text,
-    limit_text,
-    number_text,
-    sentence,
-    share_text,
-    temperature_text,
-    time_text,
-)
+from app.answers import Answer, ItemAnswer, LimitAnswer, plain_limits, wording
+from app.stores import StoreDefinition
 from app.web.charts import Chart, Curve, chart
+from app.web.field_words import FieldWords, field_words
 
-_SERIOUS = ("already_past", "medicine", "frozen_coolant_near_freeze_sensitive", "shorter_than_air_settles")
-_MOST_ROWS = 49
-_MOST_CURVES = 7
+_SERIOUS = frozenset({"already_past", "medicine", "frozen_coolant_near_freeze_sensitive", "shorter_than_air_settles"})
+_MOST_ROWS = 33
+_MOST_CURVES = 5
 
 
 @dataclass(frozen=True)
@@ -41,10 +34,9 @@ class ItemRow:
     name: str
     holds: str
     limits: tuple[LimitRow, ...]
-    melting_starts: str
-    melted: str
+    melting: str
     warmest: str
-    biot: str
+    shells: str
 
 
 @dataclass(frozen=True)
@@ -63,7 +55,7 @@ class PathRow:
     name: str
     share: str
     start: str
-    bar: float
+    bar: str
 
 
 @dataclass(frozen=True)
@@ -86,8 +78,10 @@ class AssumedRow:
 
 @dataclass(frozen=True)
 class AnswerView:
-    """The whole answer in words."""
+    """The whole answer in words. ``figure`` is its one number, ``status`` a word for how urgent it is."""
 
+    status: str
+    figure: str
     sentence: str
     range_notice: str
     serious: tuple[str, ...]
@@ -97,6 +91,7 @@ class AnswerView:
     items: tuple[ItemRow, ...]
     air_limits: tuple[LimitRow, ...]
     coolants: tuple[CoolantRow, ...]
+    horizon: str
     heat_caption: str
     paths: tuple[PathRow, ...]
     hand_check: tuple[WorkingRow, ...]
@@ -107,152 +102,164 @@ class AnswerView:
     evidence: str
 
 
-def answer_view(answer: Answer, levels: tuple[tuple[float, str], ...]) -> AnswerView:
-    """An answer in words; ``levels`` are the temperatures that its limits draw across the chart."""
-    order = sorted(answer.items, key=lambda item: _rank(item))
-    names, columns = _series(answer)
+def answer_view(definition: StoreDefinition, answer: Answer) -> AnswerView:
+    """An answer in words."""
+    levels, horizon_h = levels_of(definition), answer.horizon_h
+    names, columns = series_columns(answer)
+    words = field_words(definition)
     every = max(1, -(-len(answer.series.time_h) // _MOST_ROWS))
     return AnswerView(
-        sentence=sentence(answer),
-        range_notice=RANGE_NOTICE,
+        status=answer.status,
+        figure=_figure(answer),
+        sentence=wording.sentence(answer),
+        range_notice=wording.RANGE_NOTICE,
         serious=tuple(caution.text for caution in answer.cautions if caution.code in _SERIOUS),
         wide_chart=_chart(answer, levels, "wide"),
         narrow_chart=_chart(answer, levels, "narrow"),
-        chart_caption="Temperatures over the hours since power was lost; dotted across: limits; upright: when the "
-        "store's time ends. Read single values with pointer, touch or the arrow keys, or in the table below.",
-        items=tuple(_item_row(item, answer.horizon_h) for item in order),
-        air_limits=tuple(_limit_row(limit, answer.horizon_h) for limit in answer.air_limits),
+        chart_caption=_chart_caption(answer),
+        items=tuple(_item_row(item, horizon_h) for item in wording.by_failure(answer.items)),
+        air_limits=tuple(_limit_row(limit, horizon_h) for limit in answer.air_limits),
         coolants=tuple(
-            CoolantRow(c.name, number_text(c.left_kg_at_horizon, "kg"), time_text(c.gone_at_h, answer.horizon_h))
-            for c in answer.coolants
+            CoolantRow(
+                one.name,
+                wording.number_text(one.left_kg_at_horizon, "kg"),
+                wording.time_text(one.gone_at_h, horizon_h),
+            )
+            for one in answer.coolants
         ),
-        heat_caption=f"{energy_text(answer.heat_in.total_j)} in {hours_text(answer.horizon_h)}",
-        paths=tuple(
-            PathRow(p.path, share_text(p.share), number_text(p.w_at_start, "W"), round(100 * max(p.share, 0.0), 1))
-            for p in answer.heat_in.paths
-        ),
-        hand_check=_working(answer),
-        cautions=tuple(caution.text for caution in answer.cautions),
-        assumed=tuple(AssumedRow(a.field, _assumed_text(a.value), a.source) for a in answer.assumed),
+        horizon=wording.number_text(horizon_h, "h"),
+        heat_caption=f"{wording.energy_text(answer.heat_in.total_j)} in {wording.number_text(horizon_h, 'h')}",
+        paths=_paths(answer),
+        hand_check=tuple(WorkingRow(*row) for row in wording.hand_check_rows(answer.hand_check)),
+        cautions=tuple(one.text for one in answer.cautions if one.code not in _SERIOUS | {"best_estimate_only"}),
+        assumed=_assumed(answer, words),
         series_names=("Hours", *names),
         series_rows=tuple(
-            (f"{answer.series.time_h[k]:.2f}", *(_degrees(column[k]) for column in columns))
+            (
+                wording.fixed_text(answer.series.time_h[k], 1),
+                *(wording.fixed_text(column[k], 1) for column in columns),
+            )
             for k in range(0, len(answer.series.time_h), every)
         ),
         evidence=(
-            f"Engine {answer.engine_version}. Question {answer.fingerprint[:16]}. The heat of the run adds up to "
-            f"within {answer.energy_balance_error:.0e} of what moved."
+            f"Engine {answer.engine_version}. Fingerprint of the question {answer.fingerprint[:16]}. The heat of the "
+            f"run adds up to within {answer.energy_balance_error:.0e} of what moved."
         ),
     )
 
 
+def levels_of(definition: StoreDefinition) -> tuple[tuple[float, str], ...]:
+    """The temperatures of all limits, with their words, each once."""
+    limits = [limit for contents in definition.contents for limit in contents.limits]
+    plains = [plain for limit in (*limits, *definition.air_limits) for plain in plain_limits(limit)]
+    levels = {one.level: f"limit {wording.number_text(one.level, '°C')}" for one in plains if one.kind != "thawed"}
+    return tuple(sorted(levels.items()))
+
+
 def series_csv(answer: Answer) -> str:
-    """The temperatures of a run as comma-separated text, at full precision."""
-    names, columns = _series(answer)
-    quoted = ['"' + name.replace('"', '""') + '"' for name in ("time_h", *(f"{name} [degC]" for name in names))]
-    lines = [",".join(quoted)]
-    for k, hours in enumerate(answer.series.time_h):
-        lines.append(",".join([f"{hours:.6g}", *(f"{column[k]:.6g}" for column in columns)]))
-    return "\r\n".join(lines) + "\r\n"
+    """The temperatures of a run as comma-separated values."""
+    names, columns = series_columns(answer)
+    out = io.StringIO()
+    writer = csv.writer(out)
+    writer.writerow(["time_h", *(f"{name} [°C]" for name in names)])
+    for k, time_h in enumerate(answer.series.time_h):
+        writer.writerow([f"{time_h:.6g}", *(f"{column[k]:.6g}" for column in columns)])
+    return out.getvalue()
 
 
-def predicted_rows(answer: Answer, count: int) -> tuple[tuple[str, ...], tuple[tuple[str, ...], ...]]:
-    """Names and rows of a log sheet: hours, then predicted air and items at evenly spaced times."""
-    names, columns = _series(answer)
-    shown = [k for k, name in enumerate(names) if "mean" not in name and name != "Room"][:4]
-    last = len(answer.series.time_h) - 1
-    picks = sorted({round(last * step / count) for step in range(count + 1)})
-    rows = tuple((_clock(answer.series.time_h[at]), *(_degrees(columns[k][at]) for k in shown)) for at in picks)
-    return tuple(names[k] for k in shown), rows
-
-
-def _rank(item: ItemAnswer) -> float:
-    hours = item.hold_time_h.best_estimate
-    return float("inf") if hours is None else hours
-
-
-def _series(answer: Answer) -> tuple[list[str], list[tuple[float, ...]]]:
-    names, columns = ["Air inside"], [answer.series.air_c]
-    for name, item in answer.series.items.items():
-        names += [f"{name}, warmest", f"{name}, mean"]
-        columns += [item.warmest_c, item.mean_c]
+def series_columns(answer: Answer) -> tuple[list[str], list[Sequence[float]]]:
+    """Names and values of everything in the series, in the order of failure."""
+    names: list[str] = ["Air inside"]
+    columns: list[Sequence[float]] = [answer.series.air_c]
+    for item in wording.by_failure(answer.items):
+        series = answer.series.items[item.name]
+        names += [f"{item.name}, warmest", f"{item.name}, mean"]
+        columns += [series.warmest_c, series.mean_c]
     for name, values in answer.series.coolants.items():
         names.append(name)
         columns.append(values)
     return [*names, "Room"], [*columns, answer.series.room_c]
 
 
-def _chart(answer: Answer, levels: tuple[tuple[float, str], ...], variant: str) -> Chart:
-    curves = [Curve("air", answer.series.air_c, is_thin=True)]
-    curves += [Curve(name, item.warmest_c) for name, item in answer.series.items.items()]
+def _figure(answer: Answer) -> str:
+    if answer.status == "already_past":
+        return "Already past"
+    best_h = answer.hold_time_h.best_estimate
+    return f"Over {wording.number_text(answer.horizon_h, 'h')}" if best_h is None else wording.hours_text(best_h)
+
+
+def _chart_caption(answer: Answer) -> str:
+    hidden = len(answer.items) + len(answer.coolants) + 1 - _MOST_CURVES
+    more = f" {hidden} more are in the table." if hidden > 0 else ""
+    return (
+        "Air, the warmest point of each item and the coolants, from the loss of power. Dotted lines across are the "
+        f"limits; the upright line is the end of the hold time.{more}"
+    )
+
+
+def _chart(answer: Answer, levels: Sequence[tuple[float, str]], variant: str) -> Chart:
+    curves = [Curve("Air inside", answer.series.air_c, is_thin=True)]
+    curves += [Curve(one.name, answer.series.items[one.name].warmest_c) for one in wording.by_failure(answer.items)]
     curves += [Curve(name, values) for name, values in answer.series.coolants.items()]
-    hours = answer.hold_time_h.best_estimate
-    moments = [] if hours is None else [(hours, hours_text(hours))]
+    best_h = answer.hold_time_h.best_estimate
     return chart(
-        title=f"Temperatures in {answer.store}",
+        title=f"Temperatures in {answer.store}, in °C over hours since power loss",
         variant=variant,
         time_h=answer.series.time_h,
         curves=curves[:_MOST_CURVES],
         levels=levels,
-        moments=moments,
+        moments=() if best_h is None else ((best_h, wording.hours_text(best_h)),),
     )
 
 
 def _item_row(item: ItemAnswer, horizon_h: float) -> ItemRow:
     return ItemRow(
         name=item.name,
-        holds=hold_text(item.hold_time_h, item.status, horizon_h) if item.limits else "no limit",
+        holds=wording.hold_text(item.hold_time_h, item.status, horizon_h) if item.limits else "no limit",
         limits=tuple(_limit_row(limit, horizon_h) for limit in item.limits),
-        melting_starts=time_text(item.melting_starts_h, horizon_h),
-        melted=time_text(item.melted_h, horizon_h),
-        warmest=temperature_text(item.warmest_c_at_horizon),
-        biot=f"{number_text(item.biot, digits=2)}, {item.shells}",
+        melting=_melting(item),
+        warmest=f"Warmest point after {wording.number_text(horizon_h, 'h')}: "
+        f"{wording.temperature_text(item.warmest_c_at_horizon)}.",
+        shells=f"Biot number {wording.number_text(item.biot, digits=2)}, {item.shells} "
+        f"{'shell' if item.shells == 1 else 'shells'}.",
     )
 
 
+def _melting(item: ItemAnswer) -> str:
+    starts_h, melted_h = item.melting_starts_h, item.melted_h
+    if starts_h is None:
+        return "No ice begins to melt."
+    ends = "not all melts" if melted_h is None else f"all has melted after {wording.hours_text(melted_h)}"
+    return f"Ice begins to melt after {wording.hours_text(starts_h)}; {ends}."
+
+
 def _limit_row(limit: LimitAnswer, horizon_h: float) -> LimitRow:
-    hours = limit.best_estimate_h
-    holds = "Already past" if limit.status == "already_past" else time_text(hours, horizon_h)
-    return LimitRow(limit.limit, limit_text(limit, horizon_h), holds, limit.source or "")
-
-
-def _working(answer: Answer) -> tuple[WorkingRow, ...]:
-    check = answer.hand_check
-    rows = [
-        WorkingRow("Heat leak", number_text(check.heat_leak_w_per_k, "W/K"), "all paths added: U times area, W/K"),
-        WorkingRow(
-            "Heat capacity",
-            number_text(check.heat_capacity_j_per_k / 1e3, "kJ/K"),
-            "mass times specific heat at the start, contents, coolants, fittings, and what is felt of the walls",
+    return LimitRow(
+        text=wording.limit_name(limit.limit),
+        outcome=wording.limit_text(limit, horizon_h),
+        holds=(
+            "Already past" if limit.status == "already_past" else wording.time_text(limit.best_estimate_h, horizon_h)
         ),
-        WorkingRow("Time constant", number_text(check.time_constant_h, "h"), "heat capacity over heat leak"),
-    ]
-    if check.closed_form_h is not None:
-        rows += [
-            WorkingRow("Heat to the limit", energy_text(check.to_limit_j), "heat of everything inside up to the limit"),
-            WorkingRow(
-                "of it melting", energy_text(check.melting_j), "ice that melts on the way, at its heat of fusion"
-            ),
-            WorkingRow(
-                "Closed form",
-                hours_text(check.closed_form_h),
-                "that heat over leak times difference to the room, everything at one pace",
-            ),
-        ]
-    rows += [
-        WorkingRow(f"Delay of {name}", number_text(hours, "h"), "thickness squared over diffusivity, layers added")
-        for name, hours in check.wall_delays_h
-    ]
+        source=limit.source or "",
+    )
+
+
+def _paths(answer: Answer) -> tuple[PathRow, ...]:
+    return tuple(
+        PathRow(
+            name=path.path.capitalize(),
+            share=wording.share_text(path.share),
+            start=wording.number_text(path.w_at_start, "W"),
+            bar=f"{100.0 * min(max(path.share, 0.0), 1.0):.1f}",
+        )
+        for path in answer.heat_in.paths
+    )
+
+
+def _assumed(answer: Answer, words: FieldWords) -> tuple[AssumedRow, ...]:
+    rows = []
+    for one in answer.assumed:
+        unit = words.unit(one.field)
+        value = f"{wording.assumed_text(one.value)} {unit}".strip()
+        rows.append(AssumedRow(words.label(one.field), value, one.source))
     return tuple(rows)
-
-
-def _assumed_text(value: float | str | None) -> str:
-    return number_text(value) if isinstance(value, (int, float)) else str(value)
-
-
-def _degrees(value: float) -> str:
-    return f"{value + 0.0:.1f}".replace("-", "\u2212")
-
-
-def _clock(hours: float) -> str:
-    return f"{hours:.1f}"

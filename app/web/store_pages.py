@@ -5,14 +5,14 @@ from __future__ import annotations
 import json
 import re
 from dataclasses import dataclass
-from datetime import datetime
+from datetime import UTC, datetime
+from typing import Any
 
 from fastapi import APIRouter, Request
-from fastapi.responses import PlainTextResponse, Response
-from starlette.datastructures import FormData, UploadFile
+from fastapi.responses import Response
+from starlette.datastructures import UploadFile
 
-from app.answers import Answer, hold_time, plain_limits
-from app.answers.wording import sentence
+from app.answers import Answer, hold_time
 from app.errors import DefinitionRefused, FieldFault
 from app.stores import (
     StoreDefinition,
@@ -23,38 +23,53 @@ from app.stores import (
 )
 from app.web.answer_view import AnswerView, answer_view, series_csv
 from app.web.drawing import Drawing, drawing_of
-from app.web.form_data import Typed, document_of, typed_of, with_added, without
-from app.web.form_view import FormView, form_view
+from app.web.form import Form, form_of
+from app.web.form_tree import form_tree
+from app.web.form_values import document_of, typed_of
+from app.web.form_words import BLANKS
 from app.web.home_pages import home_page
 from app.web.plan_view import plan_page
 from app.web.templates import templates
+from app.web.typed import Typed, is_path, join, read_typed, steps
 from app.workers import Workers
 
 router = APIRouter(include_in_schema=False)
 
 _MOST_FIELDS = 20000
 _LARGEST_FILE_BYTES = 2_000_000
-_REMOVE = re.compile(r"^(?P<path>.+)\[(?P<index>\d+)\]$")
 
 
 @dataclass(frozen=True)
 class StorePage:
-    """The page on which a store is described and answered."""
+    """The page on which a store is described and answered.
+
+    ``is_unanswered``: the form changed its shape, so that the answer is to be asked for again.
+    """
 
     title: str
     heading: str
     story: str
-    form: FormView
+    form: Form
     answer: AnswerView | None
     drawing: Drawing | None
+    is_unanswered: bool = False
+
+
+@dataclass(frozen=True)
+class LiveAnswer:
+    """The answer to what is being typed, or what is missing for one."""
+
+    line: str
+    answer: AnswerView | None
 
 
 @dataclass(frozen=True)
 class Read:
     """A form that was read: the definition, or the faults."""
 
+    typed: Typed
     definition: StoreDefinition | None
-    faults: tuple[FieldFault, ...]
+    faults: tuple[FieldFault, ...] = ()
 
 
 @router.get("/store")
@@ -62,48 +77,51 @@ async def show_store(request: Request, type: str = "", sample: str = "") -> Resp
     """A form filled from a worked case or a kind of store; worked cases come with their answer."""
     if sample:
         case = sample_case(sample)
-        typed = typed_of(case.store)
-        return await _page(request, typed, read_form(typed), case.title, case.story)
+        return await _page(request, read_form(typed_of(case.store)), case.title, case.story)
     kind = store_type(type or "walk_in_freezer_room")
-    story = f"{kind.about} Values marked typical are those of the kind: {kind.source} Replace what you know."
-    typed = typed_of(kind.store)
-    return await _page(request, typed, read_form(typed), f"Describe a store: {kind.label}", story, with_answer=False)
+    story = f"{kind.about} Values marked typical are those of the kind, not of your store: replace what you know."
+    read = read_form(typed_of(kind.store))
+    return _shown(request, read.typed, f"Describe a store: {kind.label}", f"{story} {kind.source}", read.definition)
 
 
 @router.post("/store")
 async def answer_store(request: Request) -> Response:
     """Work out the answer, or change the form: add, remove, another way of giving something."""
-    typed = await typed_form(request)
-    do, _, target = typed.pop("do", "answer").partition(":")
-    if do == "answer":
-        return await _page(request, typed, read_form(typed), "", "")
-    if do == "add":
-        typed = with_added(typed, target)
-    match = _REMOVE.match(target)
-    if do == "remove" and match is not None:
-        typed = without(typed, match["path"], int(match["index"]))
-    return _form_only(request, typed)
+    typed, do = await _typed_form(request)
+    action, _, path = do.partition(":")
+    if action not in ("add", "remove", "change"):
+        return await _page(request, read_form(typed))
+    if action == "add" and path and is_path(path):
+        _add(typed, path)
+    if action == "remove" and path and is_path(path):
+        typed.remove(path)
+    return _shown(request, typed, is_unanswered=True)
 
 
 @router.post("/store/answer")
 async def live_answer(request: Request) -> Response:
-    """One line for the form that is being typed: the sentence, or what is missing."""
-    typed = await typed_form(request)
+    """The answer to what is being typed, as a part of the page; or in a line what is missing for one."""
+    typed, _ = await _typed_form(request)
     read = read_form(typed)
     if read.definition is None:
-        first = read.faults[0].message
-        more = f" (and {len(read.faults) - 1} more)" if len(read.faults) > 1 else ""
-        return PlainTextResponse(f"To get an answer: {first}{more}")
-    return PlainTextResponse(sentence(await _answer(request, read.definition)))
+        faults = form_of(typed, read.faults).faults
+        where = f"{faults[0].where}: " if faults[0].where else ""
+        more = f" And {len(faults) - 1} more." if len(faults) > 1 else ""
+        live = LiveAnswer(f"No answer yet. {where}{faults[0].message}{more}", None)
+    else:
+        view = answer_view(read.definition, await _answer(request, read.definition))
+        live = LiveAnswer(view.sentence, view)
+    status = 200 if live.answer else 422
+    return templates.TemplateResponse(request, "store/_live.html", {"live": live}, status_code=status)
 
 
 @router.post("/store/definition")
 async def save_definition(request: Request) -> Response:
     """The description as a file in the contract's JSON; a form with faults is shown again."""
-    typed = await typed_form(request)
+    typed, _ = await _typed_form(request)
     read = read_form(typed)
     if read.definition is None:
-        return await _page(request, typed, read, "", "")
+        return await _page(request, read)
     text = json.dumps(definition_document(read.definition), indent=2, ensure_ascii=False) + "\n"
     return _download(text, "application/json", _file_name(read.definition, "json"))
 
@@ -111,10 +129,10 @@ async def save_definition(request: Request) -> Response:
 @router.post("/store/series.csv")
 async def save_series(request: Request) -> Response:
     """The temperatures as comma-separated values."""
-    typed = await typed_form(request)
+    typed, _ = await _typed_form(request)
     read = read_form(typed)
     if read.definition is None:
-        return await _page(request, typed, read, "", "")
+        return await _page(request, read)
     answer = await _answer(request, read.definition)
     return _download(series_csv(answer), "text/csv; charset=utf-8", _file_name(read.definition, "csv"))
 
@@ -122,20 +140,18 @@ async def save_series(request: Request) -> Response:
 @router.post("/store/plan")
 async def print_plan(request: Request) -> Response:
     """The outage plan of the store, made to be printed."""
-    typed = await typed_form(request)
+    typed, _ = await _typed_form(request)
     read = read_form(typed)
     if read.definition is None:
-        return await _page(request, typed, read, "", "")
+        return await _page(request, read)
     answer = await _answer(request, read.definition)
-    made_at = datetime.now().astimezone().strftime("%Y-%m-%d %H:%M %Z")
-    view = answer_view(answer, levels_of(read.definition))
-    page = plan_page(read.definition, answer, view, made_at)
+    page = plan_page(read.definition, answer, made_at=datetime.now(UTC))
     return templates.TemplateResponse(request, "plan/plan.html", {"page": page})
 
 
 @router.post("/store/open")
 async def open_definition(request: Request) -> Response:
-    """A saved description: the form filled with it and its answer, or why it cannot be opened."""
+    """A saved description: the form filled with it, and its answer or its faults."""
     form = await request.form(max_files=1, max_fields=10)
     upload = form.get("file")
     raw = await upload.read(_LARGEST_FILE_BYTES + 1) if isinstance(upload, UploadFile) else b""
@@ -143,72 +159,86 @@ async def open_definition(request: Request) -> Response:
         text = "Choose a file first." if not raw else "The file is larger than 2 MB."
         return home_page(request, fault=text)
     try:
-        document = json.loads(raw)
-        definition = read_definition(document["store"] if "store" in document else document)
-    except DefinitionRefused as refused:
-        shown = "; ".join(f"{fault.field}: {fault.message}" for fault in refused.faults[:6])
-        return home_page(request, fault=f"The description has faults. {shown}")
-    except (ValueError, TypeError, RecursionError):
+        document: Any = json.loads(raw, parse_constant=str)
+    except (ValueError, RecursionError):
         return home_page(request, fault="The file is not a description in JSON.")
-    typed = typed_of(definition_document(definition))
-    return await _page(request, typed, Read(definition, ()), definition.name, "")
-
-
-async def typed_form(request: Request) -> Typed:
-    """The texts of a posted form."""
-    form: FormData = await request.form(max_fields=_MOST_FIELDS, max_files=0)
-    return {name: value for name, value in form.multi_items() if isinstance(value, str)}
+    if isinstance(document, dict) and "enclosure" not in document and isinstance(document.get("store"), dict):
+        document = document["store"]
+    if not isinstance(document, dict):
+        return home_page(request, fault="The file is JSON, but not the description of a store.")
+    return await _page(request, _read(typed_of(document), document, ()))
 
 
 def read_form(typed: Typed) -> Read:
     """The definition that a form describes, or all its faults."""
-    parsed = document_of(typed)
+    document, faults = document_of(form_tree(typed))
+    return _read(typed, document, faults)
+
+
+def _read(typed: Typed, document: dict[str, Any], faults: tuple[FieldFault, ...]) -> Read:
+    """Faults of texts stand before what the definition says of the same field."""
     try:
-        definition = read_definition(parsed.document)
+        definition = read_definition(document)
     except DefinitionRefused as refused:
-        mine = {fault.field for fault in parsed.faults}
-        others = tuple(fault for fault in refused.faults if fault.field not in mine)
-        return Read(None, (*parsed.faults, *others))
-    return Read(None, tuple(parsed.faults)) if parsed.faults else Read(definition, ())
+        mine = {fault.field for fault in faults}
+        return Read(typed, None, (*faults, *(fault for fault in refused.faults if _bare(fault.field) not in mine)))
+    return Read(typed, None, faults) if faults else Read(typed, definition)
 
 
-def levels_of(definition: StoreDefinition) -> tuple[tuple[float, str], ...]:
-    """The temperatures of all limits, with their words, each once."""
-    limits = [limit for contents in definition.contents for limit in contents.limits]
-    plains = [plain for limit in (*limits, *definition.air_limits) for plain in plain_limits(limit)]
-    levels = {
-        plain.level: f"limit {plain.level:g} °C".replace("-", "\u2212")
-        for plain in plains
-        if plain.kind in ("above", "below")
-    }
-    return tuple(sorted(levels.items()))
+def _bare(path: str) -> str:
+    return path.removesuffix(".value")
 
 
-async def _page(
-    request: Request, typed: Typed, read: Read, heading: str, story: str, *, with_answer: bool = True
-) -> Response:
+def _add(typed: Typed, path: str) -> None:
+    """One more group: the next of a list, or one that may be left out."""
+    numbers = typed.at(path).items()
+    is_single = str(steps(path)[-1]) in ("films_w_per_m2_k", "outdoors")
+    here = path if is_single else join(path, numbers[-1] + 1 if numbers else 0)
+    typed.put(f"{here}:item", "")
+    for name, text in BLANKS.get(str(steps(path)[-1]), {}).items():
+        typed.put(join(here, name), text)
+
+
+async def _typed_form(request: Request) -> tuple[Typed, str]:
+    """The texts of a posted form, and what its button does."""
+    form = await request.form(max_fields=_MOST_FIELDS, max_files=0)
+    pairs = [(name, text) for name, text in form.multi_items() if isinstance(text, str)]
+    do = next((text for name, text in pairs if name == "do"), "")
+    return read_typed((name, text) for name, text in pairs if name != "do"), do
+
+
+async def _page(request: Request, read: Read, heading: str = "", story: str = "") -> Response:
     """The page of a store with its answer; with faults it is shown again, nothing typed is lost."""
     answer: AnswerView | None = None
-    if read.definition is not None and with_answer:
-        answer = answer_view(await _answer(request, read.definition), levels_of(read.definition))
-    heading = heading or typed.get("name") or "Store"
+    if read.definition is not None:
+        answer = answer_view(read.definition, await _answer(request, read.definition))
+    return _shown(request, read.typed, heading, story, read.definition, answer, read.faults)
+
+
+def _shown(
+    request: Request,
+    typed: Typed,
+    heading: str = "",
+    story: str = "",
+    definition: StoreDefinition | None = None,
+    answer: AnswerView | None = None,
+    faults: tuple[FieldFault, ...] = (),
+    *,
+    is_unanswered: bool = False,
+) -> Response:
+    heading = heading or typed.said("name") or "Store"
     page = StorePage(
-        title=f"Error: {heading}" if read.faults else heading,
+        title=f"Error: {heading}" if faults else heading,
         heading=heading,
         story=story,
-        form=form_view(typed, read.faults),
+        form=form_of(typed, faults),
         answer=answer,
-        drawing=drawing_of(read.definition) if read.definition is not None else None,
+        drawing=drawing_of(definition) if definition is not None else None,
+        is_unanswered=is_unanswered,
     )
-    status = 422 if read.faults else 200
-    return templates.TemplateResponse(request, "store/describe.html", {"page": page}, status_code=status)
-
-
-def _form_only(request: Request, typed: Typed) -> Response:
-    """The form again after a change to its shape, without judging what is not filled in yet."""
-    heading = typed.get("name") or "Store"
-    page = StorePage(heading, heading, "", form_view(typed), None, None)
-    return templates.TemplateResponse(request, "store/describe.html", {"page": page})
+    return templates.TemplateResponse(
+        request, "store/describe.html", {"page": page}, status_code=422 if faults else 200
+    )
 
 
 async def _answer(request: Request, definition: StoreDefinition) -> Answer:

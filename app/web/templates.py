@@ -8,29 +8,27 @@ from fastapi.templating import Jinja2Templates
 from jinja2 import Environment, FileSystemLoader, StrictUndefined
 
 from app.engine import ENGINE_VERSION
-from app.web.form_view import KNOWN_CHOICES
+from app.web.form_words import KNOWN
 
 _FOLDER = Path(__file__).parents[2] / "templates"
 
 
-class Urls:
-    """Addresses of static files; the version makes browsers fetch them anew after an update."""
-
-    def static(self, name: str) -> str:
-        """Address of a static file."""
-        return f"/static/{name}?v={ENGINE_VERSION}"
+def static_url(name: str) -> str:
+    """Address of a static file; the version makes browsers fetch it anew after an update."""
+    return f"/static/{name}?v={ENGINE_VERSION}"
 
 
-def _environment() -> Environment:
-    environment = Environment(
+def environment() -> Environment:
+    """The environment of all pages."""
+    found = Environment(
         loader=FileSystemLoader(_FOLDER),
         autoescape=True,
         undefined=StrictUndefined,
         trim_blocks=True,
         lstrip_blocks=True,
     )
-    environment.globals.update(urls=Urls(), known_choices=KNOWN_CHOICES)
-    return environment
+    found.globals.update(static_url=static_url, known_choices=KNOWN)
+    return found
 
 
-templates = Jinja2Templates(env=_environment())
+templates = Jinja2Templates(env=environment())

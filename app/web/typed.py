@@ -80,10 +80,15 @@ def read_typed(pairs: Iterable[tuple[str, str]]) -> Typed:
     """The tree of what a form posted; names that are no paths are passed over."""
     root = Typed()
     for name, text in pairs:
-        if len(name) <= _LONGEST_PATH and _PATH.fullmatch(name):
+        if is_path(name):
             root.put(name, text.replace("\r\n", "\n"))
     root.renumber()
     return root
+
+
+def is_path(name: str) -> bool:
+    """Whether a name can be that of a field."""
+    return len(name) <= _LONGEST_PATH and _PATH.fullmatch(name) is not None
 
 
 def steps(path: str) -> list[Step]:

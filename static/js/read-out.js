@@ -1,39 +1,60 @@
-// Read the chart by pointer, touch or arrow keys: a cursor, and the values beside the chart in words.
-export function start(chart) {
-  const data = JSON.parse(chart.dataset.readings);
-  const cursor = chart.querySelector(".chart__cursor");
-  const line = chart.closest("figure")?.querySelector("[data-read-out]");
-  if (!cursor || !line || data.time_h.length === 0) return;
-  let at = 0;
+// Reads the chart at one time: by a slider for keyboard and touch, and by the pointer over the chart.
+const STEPS = 384;
 
-  function show(index) {
-    at = Math.max(0, Math.min(data.time_h.length - 1, index));
-    const x = data.left + ((data.right - data.left) * data.time_h[at]) / data.end_h;
-    cursor.setAttribute("x1", x);
-    cursor.setAttribute("x2", x);
-    cursor.setAttribute("visibility", "visible");
-    const values = data.names.map((name, k) => `${name} ${data.values[k][at].toFixed(1)} °C`);
-    line.textContent = `${data.time_h[at].toFixed(2)} h: ${values.join(", ")}`;
+export function start(figure) {
+  const charts = [...figure.querySelectorAll("svg.chart")];
+  if (charts.length === 0) return;
+  const end = Number(charts[0].dataset.end);
+  const slider = document.createElement("input");
+  const label = document.createElement("label");
+  const output = document.createElement("output");
+  Object.assign(slider, { type: "range", min: 0, max: end, step: end / STEPS, value: 0, id: "read-out" });
+  Object.assign(label, { htmlFor: slider.id, textContent: "Read the chart at one time: hours since power loss" });
+  label.className = "read-out__label";
+  slider.className = "read-out__slider";
+  output.className = "read-out__values";
+  figure.querySelector("figcaption").before(label, slider, output);
+
+  const lines = [...charts[0].querySelectorAll("[data-name]")].map((line) => ({
+    name: line.dataset.name,
+    points: [...line.points].map((point) => [point.x, point.y]),
+  }));
+
+  function value(points, x) {
+    const next = Math.max(points.findIndex((point) => point[0] >= x), 1);
+    const [x0, y0] = points[next - 1];
+    const [x1, y1] = points[next];
+    return y0 + ((y1 - y0) * (x - x0)) / (x1 - x0 || 1);
   }
 
-  function near(event) {
-    const box = chart.getBoundingClientRect();
-    const x = ((event.clientX - box.left) / box.width) * data.width;
-    const hours = ((x - data.left) / (data.right - data.left)) * data.end_h;
-    let best = 0;
-    data.time_h.forEach((time, k) => {
-      if (Math.abs(time - hours) < Math.abs(data.time_h[best] - hours)) best = k;
+  function show(hours) {
+    const share = hours / end;
+    for (const chart of charts) {
+      const { left, right } = chart.dataset;
+      const x = Number(left) + share * (right - left);
+      const cursor = chart.querySelector(".chart__cursor");
+      cursor.setAttribute("x1", x);
+      cursor.setAttribute("x2", x);
+      cursor.setAttribute("visibility", "visible");
+    }
+    const { left, right, top, bottom, low, high } = charts[0].dataset;
+    const x = Number(left) + share * (right - left);
+    const texts = lines.map(({ name, points }) => {
+      const celsius = Number(high) - ((value(points, x) - top) / (bottom - top)) * (high - low);
+      return `${name} ${celsius.toFixed(1).replace("-", "\u2212")} °C`;
     });
-    show(best);
+    output.textContent = `After ${hours.toFixed(1)} h: ${texts.join(", ")}`;
+    slider.setAttribute("aria-valuetext", output.textContent);
   }
 
-  chart.setAttribute("tabindex", "0");
-  chart.addEventListener("pointermove", near);
-  chart.addEventListener("pointerdown", near);
-  chart.addEventListener("keydown", (event) => {
-    const steps = { ArrowLeft: -1, ArrowRight: 1, PageDown: 10, PageUp: -10, Home: -1e9, End: 1e9 };
-    if (!(event.key in steps)) return;
-    event.preventDefault();
-    show(at + steps[event.key]);
-  });
+  slider.addEventListener("input", () => show(Number(slider.value)));
+  for (const chart of charts) {
+    chart.addEventListener("pointermove", (event) => {
+      const box = chart.getBoundingClientRect();
+      const { left, right, width } = chart.dataset;
+      const x = ((event.clientX - box.left) / box.width) * width;
+      slider.value = Math.min(Math.max((x - left) / (right - left), 0), 1) * end;
+      show(Number(slider.value));
+    });
+  }
 }

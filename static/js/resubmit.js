@@ -1,7 +1,5 @@
-// Choosing another way of giving something shows its fields at once, as the button "Change" does without scripts.
+// A choice that changes the form asks for the changed form at once, by the button beside it.
 export function start(select) {
-  select.addEventListener("change", () => {
-    const button = select.parentElement.querySelector("button[name=do]");
-    select.form.requestSubmit(button);
-  });
+  const button = select.parentElement.querySelector("[data-without-script]");
+  if (button) select.addEventListener("change", () => select.form.requestSubmit(button));
 }
