@@ -34,12 +34,18 @@ def allowed_range(unit: str, low: float | None, high: float | None) -> str:
     """Say a range in words, with its unit: "0.005 to 0.5 m", "at least 0 K", "any number"."""
     tail = f" {unit}" if unit else ""
     if low is not None and high is not None:
-        return f"{low:g} to {high:g}{tail}"
+        return f"{_plain(low)} to {_plain(high)}{tail}"
     if low is not None:
-        return f"at least {low:g}{tail}"
+        return f"at least {_plain(low)}{tail}"
     if high is not None:
-        return f"at most {high:g}{tail}"
+        return f"at most {_plain(high)}{tail}"
     return "any finite number"
+
+
+def _plain(number: float) -> str:
+    """A number without an exponent, as people write it."""
+    text = f"{number:g}"
+    return f"{number:.9f}".rstrip("0").rstrip(".") if "e" in text else text
 
 
 class UnknownKey(AppError):

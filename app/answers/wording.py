@@ -102,10 +102,10 @@ def sentence(answer: Answer) -> str:
             "were looked at (best estimate)."
         )
     if answer.status == "already_past":
-        return f"{answer.store} is past a limit from the start: {ends.item}, {limit_name(ends.limit)}."
+        return f"{answer.store} is already past a limit at the start: {ends.item}, {limit_name(ends.limit)}."
     return (
         f"With the door shut, {answer.store} holds for about {hours_text(best_h)} (best estimate). "
-        f"Then {ends.item} is the first to break a limit: {limit_name(ends.limit)}."
+        f"The first to break a limit: {ends.item}, {limit_name(ends.limit)}."
     )
 
 

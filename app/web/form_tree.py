@@ -70,6 +70,12 @@ class Group:
         return str(steps(self.path)[-1]) if self.path else ""
 
     @property
+    def is_named_by_first(self) -> bool:
+        """Whether its first control says what the group is, so that a heading would say it twice."""
+        first = self.nodes[0] if self.nodes else None
+        return isinstance(first, Control) and first.label == self.label
+
+    @property
     def list_path(self) -> str:
         """Where the list lies that this group is a member of; its own place for a group that stands alone."""
         return self.path[: self.path.rfind("[")] if self.path.endswith("]") else self.path

@@ -20,7 +20,7 @@ _MOVE_SHARE = 0.75
 """Shares of the best estimate by which to have decided and to have begun to move (our own rule of caution)."""
 
 _MOST_ITEMS_IN_LOG = 3
-_LOG_ROWS = 18
+_LOG_ROWS = 24
 _LOG_STEPS_H = (0.25, 0.5, 1.0, 2.0, 3.0, 4.0, 6.0, 8.0, 12.0, 24.0)
 
 

@@ -111,8 +111,7 @@ async def live_answer(request: Request) -> Response:
     else:
         view = answer_view(read.definition, await _answer(request, read.definition))
         live = LiveAnswer(view.sentence, view)
-    status = 200 if live.answer else 422
-    return templates.TemplateResponse(request, "store/_live.html", {"live": live}, status_code=status)
+    return templates.TemplateResponse(request, "store/_live.html", {"live": live})
 
 
 @router.post("/store/definition")

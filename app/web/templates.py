@@ -18,6 +18,11 @@ def static_url(name: str) -> str:
     return f"/static/{name}?v={ENGINE_VERSION}"
 
 
+def tied(text: str) -> str:
+    """A text whose temperatures do not part from their unit at the end of a line."""
+    return text.replace(" °C", "\N{NO-BREAK SPACE}°C")
+
+
 def environment() -> Environment:
     """The environment of all pages."""
     found = Environment(
@@ -27,6 +32,7 @@ def environment() -> Environment:
         trim_blocks=True,
         lstrip_blocks=True,
     )
+    found.filters["tied"] = tied
     found.globals.update(static_url=static_url, known_choices=KNOWN)
     return found
 

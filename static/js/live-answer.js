@@ -22,6 +22,7 @@ export function start(form) {
     line.textContent = page.querySelector("[data-live-line]")?.textContent ?? "The server did not answer as expected.";
     const fresh = isAnswered ? page.querySelector("[data-answer]") : null;
     answer.classList.toggle("is-old", !fresh);
+    figure.textContent = "";
     if (!fresh) return;
     figure.textContent = page.querySelector("[data-live-figure]").textContent;
     answer.replaceChildren(...fresh.childNodes);
