@@ -14,12 +14,9 @@ import numpy as np
 
 from app.compiled import compiled
 from app.errors import InputOutOfRange
-from app.physics.air import AIR_SPECIFIC_HEAT_J_PER_KG_K as AIR_SPECIFIC_HEAT_J_PER_KG_K
-from app.physics.air import air_density_kg_per_m3 as air_density_kg_per_m3
 from app.physics.air import air_properties
 from app.physics.convection import prandtl_factor, rayleigh_number
 from app.physics.radiation import radiation_film_w_per_m2_k
-from app.physics.walls import surface_resistance_m2_k_per_w as surface_resistance_m2_k_per_w
 from app.units import STEFAN_BOLTZMANN_W_PER_M2_K4, ZERO_CELSIUS_K
 
 _USUAL_DIFFERENCE_K = 5.0
