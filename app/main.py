@@ -7,6 +7,7 @@ from collections.abc import AsyncIterator
 from pathlib import Path
 
 from fastapi import FastAPI
+from fastapi.middleware.gzip import GZipMiddleware
 from fastapi.staticfiles import StaticFiles
 
 from app import api, web
@@ -44,6 +45,7 @@ def create_app(settings: Settings) -> FastAPI:
     app.include_router(api.router)
     app.include_router(web.router)
     app.mount("/static", StaticFiles(directory=STATIC), name="static")
+    app.add_middleware(GZipMiddleware, minimum_size=1000)
     app.add_middleware(SecurityHeaders)
     app.add_middleware(SameOrigin)
     app.add_middleware(BodyLimit, limit_bytes=settings.body_limit_bytes)

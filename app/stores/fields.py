@@ -47,7 +47,7 @@ class Quantity(Part):
     @classmethod
     def _bare(cls, given: Any) -> Any:
         if isinstance(given, (int, float)) and not isinstance(given, bool):
-            return {"value": float(given)}
+            return {"value": given}
         return given
 
     @model_serializer

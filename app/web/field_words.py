@@ -7,11 +7,10 @@ from dataclasses import dataclass
 
 from app.answers import wording
 from app.stores import StoreDefinition, definition_document
-from app.web.form import Form, form_of
-from app.web.form_tree import Control, Group, Listing, Node, walk
+from app.web.form import Form, form_of, labels_around
+from app.web.form_tree import Control, Listing, Node, walk
 from app.web.form_values import typed_of
-from app.web.form_words import KNOWN
-from app.web.typed import join, steps
+from app.web.form_words import KNOWN, WAYS
 
 
 @dataclass(frozen=True)
@@ -33,28 +32,25 @@ class FieldWords:
         """A field's label, behind those of the groups around it."""
         node = self.places.get(path)
         own = node.label if node is not None and node.label else path
-        return ": ".join([*self._around(path), own])
+        return ": ".join([*labels_around(path, self.places), own])
 
     def unit(self, path: str) -> str:
         """A field's unit; none where it has none."""
         node = self.places.get(path)
         return node.unit if isinstance(node, Control) else ""
 
-    def _around(self, path: str) -> list[str]:
-        labels, here = [], ""
-        for step in steps(path)[:-1]:
-            here = join(here, step)
-            node = self.places.get(here)
-            if isinstance(node, Group) and node.label:
-                labels.append(node.label)
-        return labels
-
     def inputs(self) -> tuple[InputRow, ...]:
         """Everything that was given, in the order of the form, with how it is known."""
         nodes = [node for part in self.form.sections for top in (*part.nodes, *part.folded) for node in walk(top)]
         return tuple(
-            InputRow(self.label(node.path), _said(node)) for node in nodes if isinstance(node, Control) and node.value
+            InputRow(self.label(node.path), _said(node))
+            for node in nodes
+            if isinstance(node, Control) and node.value and node.label not in _SAID_BY_OTHERS
         )
+
+
+_SAID_BY_OTHERS = frozenset(WAYS[name].label for name in ("Face", "Layer"))
+"""Choices of the form that the fields beneath them say again."""
 
 
 def field_words(definition: StoreDefinition) -> FieldWords:

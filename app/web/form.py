@@ -137,17 +137,18 @@ def _placed(fault: FieldFault, places: Mapping[str, Node]) -> FormFault:
     path = fault.field
     while path and path not in places:
         path = path[: max(path.rfind("."), path.rfind("["), path.rfind(":"), 0)]
-    return FormFault(path, _where(path, places), _message(fault, places.get(path)))
+    return FormFault(path, ", ".join(labels_around(path, places)), _message(fault, places.get(path)))
 
 
-def _where(path: str, places: Mapping[str, Node]) -> str:
+def labels_around(path: str, places: Mapping[str, Node]) -> list[str]:
+    """Labels of the groups around a place, from the outside in."""
     labels, here = [], ""
     for step in steps(path)[:-1]:
         here = join(here, step)
         node = places.get(here)
         if isinstance(node, Group) and node.label:
             labels.append(node.label)
-    return ", ".join(labels)
+    return labels
 
 
 def _message(fault: FieldFault, node: Node | None) -> str:

@@ -186,6 +186,10 @@ BLANKS: Mapping[str, Mapping[str, str]] = {
 """What stands in a new member besides its empty fields."""
 
 LABELS: Mapping[str, str] = {
+    "enclosure": "",
+    "surroundings": "",
+    "start": "",
+    "outage": "",
     "faces": "",
     "overall": "",
     "composition": "Composition, as fractions of 1",
@@ -198,5 +202,3 @@ LABELS: Mapping[str, str] = {
     "outside": "Outside",
 }
 """Headings of groups where the field's own label would say too much or too little."""
-
-FACE_LABELS = {"walls": "Walls, all round", "ceiling": "Ceiling or lid", "floor": "Floor"}

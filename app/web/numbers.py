@@ -8,10 +8,10 @@ from __future__ import annotations
 import re
 from dataclasses import dataclass
 
-_NUMBER = re.compile(r"([+-]?[\d.,]*\d[\d.,]*(?:[eE][+-]?\d{1,3})?)\s*(.*)", re.DOTALL)
+_NUMBER = re.compile(r"([+-]?[0-9.,]*[0-9][0-9.,]*(?:[eE][+-]?[0-9]{1,3})?)\s*(.*)", re.DOTALL)
 _SPACES = str.maketrans({"\u00a0": " ", "\u2009": " ", "\u202f": " ", "\u2212": "-", "\u2013": "-"})
 _GROUPED = re.compile(r"(?<=\d) (?=\d{3}(?!\d))")
-_THOUSANDS = re.compile(r"[+-]?[1-9]\d{0,2},\d{3}")
+_THOUSANDS = re.compile(r"[+-]?[1-9][0-9]{0,2},[0-9]{3}")
 _PLAIN = str.maketrans({"²": "2", "³": "3", "°": "", "·": "", ".": "", " ": "", "(": "", ")": "", "*": "", "^": ""})
 _SAME_UNITS = {
     "°C": ("c", "degc", "celsius"),

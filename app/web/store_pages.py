@@ -151,9 +151,9 @@ async def print_plan(request: Request) -> Response:
 @router.post("/store/open")
 async def open_definition(request: Request) -> Response:
     """A saved description: the form filled with it, and its answer or its faults."""
-    form = await request.form(max_files=1, max_fields=10)
-    upload = form.get("file")
-    raw = await upload.read(_LARGEST_FILE_BYTES + 1) if isinstance(upload, UploadFile) else b""
+    async with request.form(max_files=1, max_fields=10) as form:
+        upload = form.get("file")
+        raw = await upload.read(_LARGEST_FILE_BYTES + 1) if isinstance(upload, UploadFile) else b""
     if not raw or len(raw) > _LARGEST_FILE_BYTES:
         text = "Choose a file first." if not raw else "The file is larger than 2 MB."
         return home_page(request, fault=text)
@@ -200,8 +200,8 @@ def _add(typed: Typed, path: str) -> None:
 
 async def _typed_form(request: Request) -> tuple[Typed, str]:
     """The texts of a posted form, and what its button does."""
-    form = await request.form(max_fields=_MOST_FIELDS, max_files=0)
-    pairs = [(name, text) for name, text in form.multi_items() if isinstance(text, str)]
+    async with request.form(max_fields=_MOST_FIELDS, max_files=0) as form:
+        pairs = [(name, text) for name, text in form.multi_items() if isinstance(text, str)]
     do = next((text for name, text in pairs if name == "do"), "")
     return read_typed((name, text) for name, text in pairs if name != "do"), do
 
