@@ -30,7 +30,7 @@ def work_out(page: Page) -> None:
 @pytest.mark.parametrize("width", WIDTHS)
 def test_form_filled_from_empty_gives_an_answer_and_a_chart(opened, width):
     page = opened("/store?type=chest_freezer", width)
-    for box in page.locator("form#form input[type=text]:visible").all():
+    for box in page.locator("form#form input:not([type=hidden]):visible").all():
         box.fill("")
     work_out(page)
     # everything that is needed is missing now, said on top and beside the fields
@@ -69,7 +69,7 @@ def test_form_filled_from_empty_gives_an_answer_and_a_chart(opened, width):
     assert "Ice cream" in sentence(page)
     chart = page.locator("svg.chart:visible")
     assert chart.count() == 1
-    assert chart.locator("path").count() >= 2
+    assert chart.locator("polyline, path").count() >= 2
 
 
 @pytest.mark.parametrize("width", WIDTHS)
@@ -168,18 +168,18 @@ def test_nonsense_is_kept_and_said_beside_the_field(opened):
     # the summary has the focus, and its links lead to the fields
     assert page.evaluate("document.activeElement.closest('[role=alert]') !== null")
     summary.get_by_role("link").first.click()
-    assert page.evaluate("document.activeElement.name || document.activeElement.id").startswith("enclosure.faces.walls")
+    assert page.evaluate("document.activeElement.name") == "contents[0].mass_kg"
 
 
 @pytest.mark.parametrize("width", WIDTHS)
 def test_chart_is_read_by_keys(opened, width):
     page = opened("/store?sample=food-bank-freezer", width)
-    chart = page.locator("svg.chart:visible").first
-    chart.focus()
-    before = page.locator("main").inner_text()
+    slider = page.get_by_role("slider").first
+    slider.focus()
     page.keyboard.press("End")
-    page.wait_for_timeout(200)
-    assert page.locator("main").inner_text() != before
+    figure = page.locator("figure", has=slider)
+    expect(figure.get_by_role("status")).to_contain_text("96")
+    expect(figure.get_by_role("status")).to_contain_text("Frozen peas")
 
 
 def test_plan_prints_to_pages_that_hold_what_they_must(opened, tmp_path):
@@ -189,7 +189,7 @@ def test_plan_prints_to_pages_that_hold_what_they_must(opened, tmp_path):
     printed = tmp_path / "plan.pdf"
     page.pdf(path=printed, format="A4", prefer_css_page_size=True)
     text = subprocess.run(["pdftotext", "-layout", printed, "-"], capture_output=True, text=True, check=True).stdout
-    for wanted in ("Food bank freezer", "best estimate", "Frozen peas", "Hours since power loss", "advises"):
+    for wanted in ("Food bank freezer", "best estimate", "Frozen peas", "Power was lost on", "Temperature log"):
         assert wanted in text
     # controls are not printed
     assert MAIN not in text
