@@ -192,14 +192,14 @@ def _chart_caption(answer: Answer) -> str:
     hidden = len(answer.items) + len(answer.coolants) + 1 - _MOST_CURVES
     more = f" {hidden} more are in the table." if hidden > 0 else ""
     return (
-        "Air, the warmest point of each item and the coolants, from the loss of power. Dotted lines across are the "
-        f"limits; the upright line is the end of the hold time.{more}"
+        "Air, the point of each item at which its limit is judged, and the coolants, from the loss of power. Dotted "
+        f"lines across are the limits; the upright line is the end of the hold time.{more}"
     )
 
 
 def _chart(answer: Answer, levels: Sequence[tuple[float, str]], variant: str) -> Chart:
     curves = [Curve("Air inside", answer.series.air_c, is_thin=True)]
-    curves += [Curve(one.name, answer.series.items[one.name].warmest_c) for one in wording.by_failure(answer.items)]
+    curves += [_item_curve(answer, item) for item in wording.by_failure(answer.items)]
     curves += [Curve(name, values) for name, values in answer.series.coolants.items()]
     best_h = answer.hold_time_h.best_estimate
     return chart(
@@ -210,6 +210,15 @@ def _chart(answer: Answer, levels: Sequence[tuple[float, str]], variant: str) ->
         levels=levels,
         moments=() if best_h is None else ((best_h, wording.hours_text(best_h)),),
     )
+
+
+def _item_curve(answer: Answer, item: ItemAnswer) -> Curve:
+    """The point of an item at which its first limit is judged; its warmest point where nothing fails."""
+    series = answer.series.items[item.name]
+    first = [one for one in item.limits if one.best_estimate_h == item.hold_time_h.best_estimate]
+    if first and first[0].best_estimate_h is not None and first[0].limit.endswith("mean point"):
+        return Curve(f"{item.name}, mean", series.mean_c)
+    return Curve(item.name, series.warmest_c)
 
 
 def _item_row(item: ItemAnswer, horizon_h: float) -> ItemRow:

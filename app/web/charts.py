@@ -33,10 +33,19 @@ class Curve:
 
 @dataclass(frozen=True)
 class Tick:
-    """A mark on an axis, or a level across the chart."""
+    """A mark on an axis."""
 
     at: float
     text: str
+
+
+@dataclass(frozen=True)
+class Level:
+    """A line across the chart, with its words near its right end."""
+
+    at: float
+    text: str
+    text_at: float
 
 
 @dataclass(frozen=True)
@@ -81,7 +90,7 @@ class Chart:
     axis_y: float
     x_ticks: tuple[Tick, ...]
     y_ticks: tuple[Tick, ...]
-    levels: tuple[Tick, ...]
+    levels: tuple[Level, ...]
     marks: tuple[Mark, ...]
     lines: tuple[Line, ...]
     end_h: float
@@ -120,7 +129,7 @@ def chart(
     width, height, names = (880, 440, 170.0) if is_wide else (400, 420, 112.0)
     values = [value for curve in curves for value in curve.values] + [level for level, _ in levels]
     y_steps = ticks(min(values), max(values), 6)
-    frame = _Frame(52.0, width - names, 34.0, height - 52.0, time_h[-1], y_steps[0], y_steps[-1])
+    frame = _Frame(52.0, width - names, 44.0, height - 52.0, time_h[-1], y_steps[0], y_steps[-1])
     x_steps = hour_ticks(frame.end_h, 8 if is_wide else 4)
     return Chart(
         id=f"chart-{variant}",
@@ -137,7 +146,7 @@ def chart(
         axis_y=frame.bottom + 42.0,
         x_ticks=tuple(Tick(frame.x(step), plain_number(step)) for step in x_steps),
         y_ticks=tuple(Tick(frame.y(step), plain_number(step)) for step in y_steps),
-        levels=tuple(Tick(frame.y(level), text) for level, text in levels),
+        levels=_levels(frame, levels),
         marks=tuple(_mark(frame, at_h, text) for at_h, text in moments),
         lines=_lines(frame, time_h, curves, longest=16 if is_wide else 11),
         end_h=frame.end_h,
@@ -170,6 +179,12 @@ def _mark(frame: _Frame, at_h: float, text: str) -> Mark:
     is_late = at_h > 0.55 * frame.end_h
     at = frame.x(at_h)
     return Mark(at, text, at - 6.0 if is_late else at + 6.0, "end" if is_late else "start")
+
+
+def _levels(frame: _Frame, levels: Sequence[tuple[float, str]]) -> tuple[Level, ...]:
+    heights = [frame.y(level) for level, _ in levels]
+    words = _spread([height - 6.0 for height in heights], frame.top - 6.0, frame.bottom - 6.0)
+    return tuple(Level(at, text, round(y, 1)) for at, (_, text), y in zip(heights, levels, words, strict=True))
 
 
 def _lines(frame: _Frame, time_h: Sequence[float], curves: Sequence[Curve], longest: int) -> tuple[Line, ...]:

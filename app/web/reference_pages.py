@@ -89,6 +89,11 @@ def _limits(preset: Any) -> str:
     return "; ".join(_limit(one) for one in preset.limits)
 
 
+def _once(preset: Any, name: str) -> str:
+    """What the limits of a preset say under one name, the same words once."""
+    return "; ".join(dict.fromkeys(getattr(one, name) for one in preset.limits))
+
+
 def _limit(limit: Any) -> str:
     longer = f" for longer than {_number(limit.longer_than_h)} h" if limit.longer_than_h else ""
     window = f" over {_number(limit.window_h)} h" if limit.kind == "mean_kinetic" else ""
@@ -106,8 +111,7 @@ _TABLES: Mapping[str, _Table] = {
             "Its range": lambda row: _between(row.conductivity_low_w_per_m_k, row.conductivity_high_w_per_m_k),
             "Density, kg/m³": lambda row: _number(row.density_kg_per_m3),
             "Specific heat, J/kg·K": lambda row: _number(row.specific_heat_j_per_kg_k),
-            "Source": lambda row: row.source_text,
-            "Status": lambda row: row.status,
+            "Source": lambda row: f"{row.source_text} ({row.status})",
             "Note": lambda row: row.note,
             "Key": lambda row: row.key,
         },
@@ -124,8 +128,7 @@ _TABLES: Mapping[str, _Table] = {
             "Fibre": lambda row: _number(row.fibre_fraction),
             "Ash": lambda row: _number(row.ash_fraction),
             "Freezing begins, °C": lambda row: _number(row.initial_freezing_c),
-            "Source": lambda row: row.source_text,
-            "Status": lambda row: f"composition {row.status}; freezing point {row.freezing_status}",
+            "Source": lambda row: f"{row.source_text} (composition {row.status}, freezing {row.freezing_status})",
             "Note": lambda row: row.note,
             "Key": lambda row: row.key,
         },
@@ -140,8 +143,7 @@ _TABLES: Mapping[str, _Table] = {
             "Heat of fusion, kJ/kg": lambda row: _number(row.latent_j_per_kg / 1000.0),
             "Its range": lambda row: _between(row.latent_low_j_per_kg / 1000.0, row.latent_high_j_per_kg / 1000.0),
             "Density, kg/m³": lambda row: _number(row.density_kg_per_m3),
-            "Source": lambda row: row.source_text,
-            "Status": lambda row: row.status,
+            "Source": lambda row: f"{row.source_text} ({row.status})",
             "Note": lambda row: row.note,
             "Key": lambda row: row.key,
         },
@@ -152,11 +154,11 @@ _TABLES: Mapping[str, _Table] = {
         {
             "Limit": lambda row: row.label,
             "What is judged": _limits,
-            "Body": lambda row: row.body,
-            "Document": lambda row: f"{row.document}, {row.edition}, {row.limits[0].clause}".rstrip(", "),
-            "In its own words": lambda row: "; ".join(dict.fromkeys(one.original for one in row.limits)),
-            "Status": lambda row: "; ".join(dict.fromkeys(one.status for one in row.limits)),
-            "Note": lambda row: " ".join(dict.fromkeys(one.note for one in row.limits)),
+            "Published in": lambda row: f"{row.body}: {row.document}, {row.edition}, {row.limits[0].clause}".rstrip(
+                ", "
+            ),
+            "In its own words": lambda row: _once(row, "original"),
+            "Status and note": lambda row: f"{_once(row, 'status').capitalize()}. {_once(row, 'note')}",
             "Key": lambda row: row.key,
         },
     ),

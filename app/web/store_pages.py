@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import json
+import logging
 import re
 from dataclasses import dataclass
 from datetime import UTC, datetime
@@ -13,7 +14,7 @@ from fastapi.responses import Response
 from starlette.datastructures import UploadFile
 
 from app.answers import Answer, hold_time
-from app.errors import DefinitionRefused, FieldFault
+from app.errors import AppError, DefinitionRefused, FieldFault, TooBusy
 from app.stores import (
     StoreDefinition,
     definition_document,
@@ -34,6 +35,8 @@ from app.web.typed import Typed, is_path, join, read_typed, steps
 from app.workers import Workers
 
 router = APIRouter(include_in_schema=False)
+
+_LOG = logging.getLogger("stillcold")
 
 _MOST_FIELDS = 20000
 _LARGEST_FILE_BYTES = 2_000_000
@@ -77,11 +80,11 @@ async def show_store(request: Request, type: str = "", sample: str = "") -> Resp
     """A form filled from a worked case or a kind of store; worked cases come with their answer."""
     if sample:
         case = sample_case(sample)
-        return await _page(request, read_form(typed_of(case.store)), case.title, case.story)
+        return await _answered(request, read_form(typed_of(case.store)), case.title, case.story)
     kind = store_type(type or "walk_in_freezer_room")
     story = f"{kind.about} Values marked typical are those of the kind, not of your store: replace what you know."
     read = read_form(typed_of(kind.store))
-    return _shown(request, read.typed, f"Describe a store: {kind.label}", f"{story} {kind.source}", read.definition)
+    return _shown(request, read, f"Describe a store: {kind.label}", f"{story} {kind.source}")
 
 
 @router.post("/store")
@@ -90,26 +93,26 @@ async def answer_store(request: Request) -> Response:
     typed, do = await _typed_form(request)
     action, _, path = do.partition(":")
     if action not in ("add", "remove", "change"):
-        return await _page(request, read_form(typed))
+        return await _answered(request, read_form(typed))
     if action == "add" and path and is_path(path):
         _add(typed, path)
     if action == "remove" and path and is_path(path):
         typed.remove(path)
-    return _shown(request, typed, is_unanswered=True)
+    return _shown(request, Read(typed, None), is_unanswered=True)
 
 
 @router.post("/store/answer")
 async def live_answer(request: Request) -> Response:
     """The answer to what is being typed, as a part of the page; or in a line what is missing for one."""
     typed, _ = await _typed_form(request)
-    read = read_form(typed)
-    if read.definition is None:
+    read, answer = await _answer(request, read_form(typed))
+    if read.definition is None or answer is None:
         faults = form_of(typed, read.faults).faults
         where = f"{faults[0].where}: " if faults[0].where else ""
         more = f" And {len(faults) - 1} more." if len(faults) > 1 else ""
         live = LiveAnswer(f"No answer yet. {where}{faults[0].message}{more}", None)
     else:
-        view = answer_view(read.definition, await _answer(request, read.definition))
+        view = answer_view(read.definition, answer)
         live = LiveAnswer(view.sentence, view)
     return templates.TemplateResponse(request, "store/_live.html", {"live": live})
 
@@ -120,7 +123,7 @@ async def save_definition(request: Request) -> Response:
     typed, _ = await _typed_form(request)
     read = read_form(typed)
     if read.definition is None:
-        return await _page(request, read)
+        return _shown(request, read)
     text = json.dumps(definition_document(read.definition), indent=2, ensure_ascii=False) + "\n"
     return _download(text, "application/json", _file_name(read.definition, "json"))
 
@@ -129,10 +132,9 @@ async def save_definition(request: Request) -> Response:
 async def save_series(request: Request) -> Response:
     """The temperatures as comma-separated values."""
     typed, _ = await _typed_form(request)
-    read = read_form(typed)
-    if read.definition is None:
-        return await _page(request, read)
-    answer = await _answer(request, read.definition)
+    read, answer = await _answer(request, read_form(typed))
+    if read.definition is None or answer is None:
+        return _shown(request, read)
     return _download(series_csv(answer), "text/csv; charset=utf-8", _file_name(read.definition, "csv"))
 
 
@@ -140,10 +142,9 @@ async def save_series(request: Request) -> Response:
 async def print_plan(request: Request) -> Response:
     """The outage plan of the store, made to be printed."""
     typed, _ = await _typed_form(request)
-    read = read_form(typed)
-    if read.definition is None:
-        return await _page(request, read)
-    answer = await _answer(request, read.definition)
+    read, answer = await _answer(request, read_form(typed))
+    if read.definition is None or answer is None:
+        return _shown(request, read)
     page = plan_page(read.definition, answer, made_at=datetime.now(UTC))
     return templates.TemplateResponse(request, "plan/plan.html", {"page": page})
 
@@ -165,7 +166,7 @@ async def open_definition(request: Request) -> Response:
         document = document["store"]
     if not isinstance(document, dict):
         return home_page(request, fault="The file is JSON, but not the description of a store.")
-    return await _page(request, _read(typed_of(document), document, ()))
+    return await _answered(request, _read(typed_of(document), document, ()))
 
 
 def read_form(typed: Typed) -> Read:
@@ -206,43 +207,49 @@ async def _typed_form(request: Request) -> tuple[Typed, str]:
     return read_typed((name, text) for name, text in pairs if name != "do"), do
 
 
-async def _page(request: Request, read: Read, heading: str = "", story: str = "") -> Response:
+async def _answer(request: Request, read: Read) -> tuple[Read, Answer | None]:
+    """The answer of a form that was read; a run that is refused becomes a fault of the form."""
+    if read.definition is None:
+        return read, None
+    workers: Workers = request.app.state.workers
+    try:
+        return read, await workers.ask(hold_time, read.definition)
+    except TooBusy:
+        raise
+    except AppError as refused:
+        _LOG.error("no answer: %s", refused)
+        fault = FieldFault("", f"{refused} No number is shown rather than a wrong one.", None, "")
+        return Read(read.typed, None, (fault,)), None
+
+
+async def _answered(request: Request, read: Read, heading: str = "", story: str = "") -> Response:
     """The page of a store with its answer; with faults it is shown again, nothing typed is lost."""
-    answer: AnswerView | None = None
-    if read.definition is not None:
-        answer = answer_view(read.definition, await _answer(request, read.definition))
-    return _shown(request, read.typed, heading, story, read.definition, answer, read.faults)
+    read, answer = await _answer(request, read)
+    return _shown(request, read, heading, story, answer)
 
 
 def _shown(
     request: Request,
-    typed: Typed,
+    read: Read,
     heading: str = "",
     story: str = "",
-    definition: StoreDefinition | None = None,
-    answer: AnswerView | None = None,
-    faults: tuple[FieldFault, ...] = (),
+    answer: Answer | None = None,
     *,
     is_unanswered: bool = False,
 ) -> Response:
-    heading = heading or typed.said("name") or "Store"
+    heading = heading or read.typed.said("name") or "Store"
+    known = read.definition
     page = StorePage(
-        title=f"Error: {heading}" if faults else heading,
+        title=f"Error: {heading}" if read.faults else heading,
         heading=heading,
         story=story,
-        form=form_of(typed, faults),
-        answer=answer,
-        drawing=drawing_of(definition) if definition is not None else None,
+        form=form_of(read.typed, read.faults),
+        answer=answer_view(known, answer) if known is not None and answer is not None else None,
+        drawing=drawing_of(known) if known is not None else None,
         is_unanswered=is_unanswered,
     )
-    return templates.TemplateResponse(
-        request, "store/describe.html", {"page": page}, status_code=422 if faults else 200
-    )
-
-
-async def _answer(request: Request, definition: StoreDefinition) -> Answer:
-    workers: Workers = request.app.state.workers
-    return await workers.ask(hold_time, definition)
+    status = 422 if read.faults else 200
+    return templates.TemplateResponse(request, "store/describe.html", {"page": page}, status_code=status)
 
 
 def _download(text: str, media_type: str, name: str) -> Response:

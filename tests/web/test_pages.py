@@ -8,17 +8,24 @@ from typing import Any
 
 import pytest
 from fastapi.testclient import TestClient
+from hypothesis import given
+from hypothesis import strategies as st
 
+from app.errors import EnergyNotConserved, TooBusy
 from app.main import STATIC
 from app.stores import definition_document, read_definition, sample_case, sample_cases, store_types
 from app.web.error_pages import ErrorPage
+from app.web.form import form_of
+from app.web.form_values import typed_of
 from app.web.home_pages import HomePage
 from app.web.plan_view import PlanPage
 from app.web.reference_pages import ApiPage, TablePage
-from app.web.store_pages import StorePage
+from app.web.store_pages import StorePage, read_form
+from app.web.typed import read_typed
 from tests.web.pages import Page
 
 FREEZER = "/store?sample=food-bank-freezer"
+NAMES = [name for name, _ in typed_of(sample_case("food-bank-freezer").store).flat()] + ["outage:json", ":json"]
 WALL = "enclosure.faces.walls.layers[1].thickness_m"
 
 
@@ -222,3 +229,49 @@ def test_the_limits_page_prints_the_standing_notice(client: TestClient) -> None:
 def test_unknown_things_are_not_found(client: TestClient) -> None:
     for path in ("/store?sample=nothing", "/store?type=nothing", "/reference/nothing"):
         assert client.get(path).status_code == 404
+
+
+def test_a_run_that_is_refused_keeps_the_form_and_shows_no_number(
+    client: TestClient, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    def refuse(_: object) -> None:
+        raise EnergyNotConserved(0.1, 1e-6)
+
+    typed = typed_form(client)
+    monkeypatch.setattr("app.web.store_pages.hold_time", refuse)
+    response: Any = client.post("/store", data=typed)
+    assert response.status_code == 422
+    assert "does not add up" in response.text
+    assert response.context["page"].answer is None
+    assert Page(response.text).typed() == typed
+
+
+def test_a_full_queue_is_said_with_when_to_try_again(client: TestClient, monkeypatch: pytest.MonkeyPatch) -> None:
+    async def full(*_: object) -> None:
+        raise TooBusy(2)
+
+    typed = typed_form(client)
+    monkeypatch.setattr(client.app.state.workers, "ask", full)  # type: ignore[attr-defined]
+    response = client.post("/store", data=typed)
+    assert response.status_code == 503
+    assert response.headers["retry-after"] == "2"
+
+
+def test_a_post_that_another_site_makes_is_refused(client: TestClient) -> None:
+    response = client.post("/store", data={"name": "A"}, headers={"Sec-Fetch-Site": "cross-site"})
+    assert response.status_code == 403
+
+
+@given(
+    st.lists(
+        st.tuples(
+            st.from_regex(r"[a-z_.:\[\]0-9]{0,30}", fullmatch=True) | st.sampled_from(NAMES),
+            st.text(max_size=12) | st.sampled_from(["1", "-5", "1,500", "series", "own", "{}", "[1]"]),
+        ),
+        max_size=12,
+    )
+)
+def test_no_post_whatever_is_in_it_breaks_the_form(pairs: list[tuple[str, str]]) -> None:
+    typed = read_typed(pairs)
+    form = form_of(typed, read_form(typed).faults)
+    assert form.faults
