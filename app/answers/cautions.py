@@ -130,7 +130,7 @@ def _thick_contents(case: _Case) -> Iterator[Caution]:
     if thick:
         yield Caution(
             "thick_contents",
-            f"{', '.join(thick)}: so thick, or so poor a conductor, that surface and middle differ by far. The limit is "
+            f"{', '.join(thick)}: so thick, or so poor a conductor, that surface and middle differ much. The limit is "
             "read where it says; the other parts are colder.",
         )
 

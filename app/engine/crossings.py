@@ -54,8 +54,8 @@ class Trace:
         """Values at given times within the run, shape as ``times_s``."""
         step = np.clip(np.searchsorted(self.starts_s, times_s, side="right") - 1, 0, len(self.starts_s) - 1)
         share = (times_s - self.starts_s[step]) / self.lengths_s[step]
-        values: Floats = np.polynomial.polynomial.polyval(share, self.powers[step].T, tensor=False)
-        return values
+        values = np.polynomial.polynomial.polyval(share, self.powers[step].T, tensor=False)
+        return np.asarray(values, dtype=np.float64)
 
     def looks(self) -> tuple[Floats, Floats]:
         """Times and values on a fine grid, ``_LOOKS`` pieces a step, and at every extremum. [s, -]"""

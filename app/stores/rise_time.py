@@ -108,14 +108,14 @@ def _test_network(definition: StoreDefinition, overall: RiseTime, leak_w_per_k: 
         }
     )
     store = network_of(test)
-    load = store.items[0]
-    count, share = _shells_of_outer_packages(test, load)
-    first = load.first_body
+    placed = store.items[0]
+    count, share = _shells_of_outer_packages(test, placed)
+    first = placed.first_body
     watches = [
         Watch("fewer", MEAN, first, first + count - 1),
-        Watch("more", MEAN, first, min(first + count, first + len(load.load.bodies) - 1)),
+        Watch("more", MEAN, first, min(first + count, first + len(placed.load.bodies) - 1)),
     ]
-    return with_mean_watches(store.network, watches, load.load.curve), share
+    return with_mean_watches(store.network, watches, placed.load.curve), share
 
 
 def _shells_of_outer_packages(test: StoreDefinition, load: PlacedItem) -> tuple[int, float]:
