@@ -75,7 +75,7 @@ class HandCheck:
 
     heat_leak_w_per_k: float
     heat_capacity_j_per_k: float
-    time_constant_h: float
+    time_constant_h: float | None
     to_limit_j: float
     melting_j: float
     closed_form_h: float | None

@@ -34,7 +34,7 @@ def hand_check(store: StoreNetwork, limit_c: float | None, until_h: float) -> Ha
             if _slope(curve, start_c) > 0
         )
     )
-    time_constant_h = hours_from_seconds(capacity / leak) if leak > 0.0 else float("inf")
+    time_constant_h = hours_from_seconds(capacity / leak) if leak > 0.0 else None
     if limit_c is None:
         return HandCheck(leak, capacity, time_constant_h, 0.0, 0.0, None, store.wall_delays_h)
     room_c = _mean_room_c(store, until_h)

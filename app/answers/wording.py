@@ -128,8 +128,9 @@ def hand_check_rows(check: HandCheck) -> tuple[tuple[str, str, str], ...]:
             number_text(check.heat_capacity_j_per_k / 1000.0, "kJ/K"),
             "mass × specific heat at the start: contents, coolants, fittings, and what is felt of the walls",
         ),
-        ("Time constant", hours_text(check.time_constant_h), "heat capacity / heat leak"),
     ]
+    if check.time_constant_h is not None:
+        rows.append(("Time constant", hours_text(check.time_constant_h), "heat capacity / heat leak"))
     if check.closed_form_h is not None:
         rows += [
             ("Heat to the limit", energy_text(check.to_limit_j), "heat that everything inside takes up to the limit"),

@@ -79,7 +79,7 @@ def problem_response(body: dict[str, Any], headers: dict[str, str] | None = None
 
 
 async def app_error(_: Request, error: Exception) -> JSONResponse:
-    """Handler of the program's own errors."""
+    """Handler of the program's own errors, and of any that nobody foresaw."""
     headers = {"Retry-After": str(error.retry_after_s)} if isinstance(error, TooBusy) else None
     return problem_response(problem_of(error), headers)
 
@@ -107,6 +107,7 @@ def _plain(given: object) -> object:
 
 
 HANDLERS: dict[Any, Any] = {
+    Exception: app_error,
     AppError: app_error,
     HTTPException: http_error,
     RequestValidationError: request_error,

@@ -9,8 +9,7 @@ from __future__ import annotations
 import difflib
 import hashlib
 import json
-import types
-from typing import Any, Union, get_args, get_origin
+from typing import Any, cast, get_args
 
 from pydantic import BaseModel, ValidationError
 from pydantic_core import ErrorDetails
@@ -70,7 +69,7 @@ def fingerprint(definition: StoreDefinition, options: dict[str, Any], engine_ver
 def _fault(document: object, error: ErrorDetails) -> FieldFault:
     path, given = _place(document, error)
     name = path.rsplit(".", 1)[-1].split("[")[0]
-    ask = _ASKS.get(name)
+    ask = _ask_at(error["loc"])
     label = ask.label if ask else name.replace("_", " ").capitalize() or "The document"
     allowed = ask.allowed if ask else ""
     return FieldFault(path, _message(error, label, name, ask), _shown(given), _allowed(error, allowed))
@@ -98,7 +97,7 @@ def _message(error: ErrorDetails, label: str, name: str, ask: Ask | None) -> str
     if kind == "missing":
         return f"{label} is missing."
     if kind == "extra_forbidden":
-        nearest = difflib.get_close_matches(name, _ASKS, n=3)
+        nearest = difflib.get_close_matches(name, _FIELD_NAMES, n=3)
         hint = f" Nearest: {', '.join(nearest)}." if nearest else ""
         return f"There is no field called {name!r} here.{hint}"
     if kind == "finite_number":
@@ -151,27 +150,44 @@ def _without_echoes(faults: list[FieldFault]) -> list[FieldFault]:
     ]
 
 
-def _collect(annotation: Any, found: dict[str, Ask], seen: set[type]) -> None:
-    """Gather the asks of all fields of all models that an annotation mentions, by field name."""
+def _ask_at(loc: tuple[int | str, ...]) -> Ask | None:
+    """The ask of the field at a place in the models, on the alternative that the place names."""
+    models, ask = [cast(type[BaseModel], StoreDefinition)], None
+    for part in loc:
+        if isinstance(part, int):
+            continue
+        fields = [model.model_fields[part] for model in models if part in model.model_fields]
+        if not fields:
+            # not a field but the name of an alternative
+            models = [model for model in models if _is_kind(model, part)] or models
+            continue
+        ask = next((mark for field in fields for mark in field.metadata if isinstance(mark, Ask)), None)
+        models = [model for field in fields for model in _models_in(field.annotation)]
+    return ask
+
+
+def _is_kind(model: type[BaseModel], tag: str) -> bool:
+    kind = model.model_fields.get("kind")
+    return kind is not None and tag in get_args(kind.annotation)
+
+
+def _models_in(annotation: Any) -> list[type[BaseModel]]:
+    """All models that an annotation mentions."""
     if isinstance(annotation, type) and issubclass(annotation, BaseModel):
-        if annotation in seen:
-            return
-        seen.add(annotation)
-        for name, field in annotation.model_fields.items():
-            ask = next((mark for mark in field.metadata if isinstance(mark, Ask)), None)
-            if ask is not None:
-                found.setdefault(name, ask)
-            _collect(field.annotation, found, seen)
-        return
-    if get_origin(annotation) in (Union, types.UnionType) or get_args(annotation):
-        for part in get_args(annotation):
-            _collect(part, found, seen)
+        return [annotation]
+    return [model for part in get_args(annotation) for model in _models_in(part)]
 
 
-def _all_asks() -> dict[str, Ask]:
-    found: dict[str, Ask] = {}
-    _collect(StoreDefinition, found, set())
-    return found
+def _all_field_names() -> frozenset[str]:
+    names: set[str] = set()
+    waiting, seen = [cast(type[BaseModel], StoreDefinition)], set()
+    while waiting:
+        model = waiting.pop()
+        seen.add(model)
+        for name, field in model.model_fields.items():
+            names.add(name)
+            waiting += [inner for inner in _models_in(field.annotation) if inner not in seen]
+    return frozenset(names)
 
 
-_ASKS = _all_asks()
+_FIELD_NAMES = _all_field_names()
