@@ -6,11 +6,12 @@ across fields is checked in ``reading``; numbers are turned into physics in ``ne
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from typing import Annotated, Any, Literal
 
 from pydantic import Discriminator, Field, Tag
 
-from app.stores.fields import Ask, Number, Part, Quantity, Whole
+from app.stores.fields import NAME, Ask, Number, Part, Quantity, Whole
 
 # A length, mass or temperature that many fields share; each use gives its own label.
 
@@ -97,7 +98,9 @@ Beyond = Annotated[
 class Face(Part):
     """Walls, ceiling or floor: layers from outside to inside, or a U-value."""
 
-    layers: Annotated[tuple[Layer, ...] | None, Ask("Layers, from outside to inside"), Field(max_length=12)] = None
+    layers: Annotated[
+        tuple[Layer, ...] | None, Ask("Layers, from outside to inside"), Field(min_length=1, max_length=12)
+    ] = None
     u_w_per_m2_k: Annotated[Quantity | None, _U_VALUE] = None
     films_w_per_m2_k: Annotated[Films | None, Ask("Films")] = None
     beyond: Annotated[Beyond, Ask("What lies beyond")] = "room"
@@ -176,7 +179,7 @@ Overall = Annotated[
 class Opening(Part):
     """A door or lid: its leaf and its seals."""
 
-    name: Annotated[str, Ask("Name of the opening"), Field(min_length=1, max_length=80)]
+    name: Annotated[str, Ask("Name of the opening"), NAME]
     in_face: Annotated[Literal["walls", "ceiling", "floor"], Ask("In which face")] = "walls"
     width_m: Annotated[Quantity, _length("Width of the opening", 0.05, 20.0)]
     height_m: Annotated[Quantity, _length("Height of the opening", 0.05, 20.0)]
@@ -240,8 +243,14 @@ class PlainSubstance(Part):
 class CurveSubstance(Part):
     """Something whose enthalpy was measured: increasing, straight between its points."""
 
-    temperature_c: Annotated[tuple[Number, ...], Ask("Temperatures"), Field(min_length=2, max_length=200)]
-    enthalpy_j_per_kg: Annotated[tuple[Number, ...], Ask("Enthalpies"), Field(min_length=2, max_length=200)]
+    temperature_c: Annotated[
+        tuple[Number, ...], _temperature("Temperatures", -150.0, 150.0), Field(min_length=2, max_length=200)
+    ]
+    enthalpy_j_per_kg: Annotated[
+        tuple[Number, ...],
+        Ask("Enthalpies", "J/kg", "joules per kilogram", -1e7, 1e7),
+        Field(min_length=2, max_length=200),
+    ]
     conductivity_w_per_m_k: Annotated[Number, _CONDUCTIVITY]
     density_kg_per_m3: Annotated[Number, _DENSITY]
 
@@ -419,7 +428,7 @@ Limit = Annotated[
 class Contents(Part):
     """One item or lot: what it is, how much, how it stands, what it must not pass."""
 
-    name: Annotated[str, Ask("Name"), Field(min_length=1, max_length=80)]
+    name: Annotated[str, Ask("Name"), NAME]
     food: Annotated[str | None, Ask("Food of the table")] = None
     composition: Annotated[Composition | None, Ask("Composition")] = None
     initial_freezing_c: Annotated[Quantity | None, _temperature("Freezing begins at", -38.0, -0.05)] = None
@@ -437,7 +446,7 @@ class Contents(Part):
 class Coolant(Part):
     """Ice, packs and plates that take up heat."""
 
-    name: Annotated[str, Ask("Name"), Field(min_length=1, max_length=80)]
+    name: Annotated[str, Ask("Name"), NAME]
     coolant: Annotated[str, Ask("Coolant of the table")]
     mass_kg: Annotated[Quantity, _MASS]
     start_c: Annotated[Quantity | None, _temperature("Temperature at the start")] = None
@@ -447,12 +456,17 @@ class Coolant(Part):
     wrapping_w_per_k: Annotated[Quantity | None, Ask("Wrapping", "W/K", "watts per kelvin", 0.001, 1000.0)] = None
 
 
-class _History(Part):
+class _Place(Part):
     """What any room may say besides its temperature; not used yet."""
 
-    relative_humidity: Annotated[Quantity | tuple[Number, ...] | None, Ask("Relative humidity")] = None
     volume_m3: Annotated[Quantity | None, Ask("Volume of the room", "m³", "cubic metres", 0.1, 1e7)] = None
     air_changes_per_h: Annotated[Quantity | None, Ask("Air changes", "1/h", "per hour", 0.0, 1000.0)] = None
+
+
+class _History(_Place):
+    """What a room may say whose temperature is not a list; not used yet."""
+
+    relative_humidity: Annotated[Quantity | None, _fraction("Relative humidity")] = None
 
 
 _AROUND = ("Temperature", -60.0, 70.0)
@@ -484,12 +498,17 @@ class DayHistory(_History):
     start_hour: Annotated[Quantity, Ask("Power is lost at", "h", "o'clock", 0.0, 24.0)] = Quantity(value=12.0)
 
 
-class SeriesHistory(_History):
+class SeriesHistory(_Place):
     """Temperatures at times, straight between them."""
 
     kind: Literal["series"]
-    time_h: Annotated[tuple[Number, ...], Ask("Times"), Field(min_length=2, max_length=20000)]
-    temperature_c: Annotated[tuple[Number, ...], Ask("Temperatures"), Field(min_length=2, max_length=20000)]
+    time_h: Annotated[tuple[Number, ...], _hours("Times"), Field(min_length=2, max_length=20000)]
+    temperature_c: Annotated[
+        tuple[Number, ...], _temperature("Temperatures", -60.0, 70.0), Field(min_length=2, max_length=20000)
+    ]
+    relative_humidity: Annotated[
+        tuple[Number, ...] | None, _fraction("Relative humidity at those times"), Field(max_length=20000)
+    ] = None
 
 
 SteadyHistory = Annotated[ConstantHistory | RampHistory | DayHistory | SeriesHistory, Field(discriminator="kind")]
@@ -536,7 +555,7 @@ class StoreDefinition(Part):
     """One store: the document of the contract."""
 
     definition_version: Annotated[Literal[1], Ask("Version of the definition")] = 1
-    name: Annotated[str, Ask("Name of the store"), Field(min_length=1, max_length=80)] = "Store"
+    name: Annotated[str, Ask("Name of the store"), NAME] = "Store"
     enclosure: Annotated[Enclosure, Ask("Size and walls")]
     contents: Annotated[tuple[Contents, ...], Ask("Contents"), Field(min_length=1, max_length=60)]
     coolants: Annotated[tuple[Coolant, ...], Ask("Coolants"), Field(max_length=40)] = ()
@@ -546,11 +565,28 @@ class StoreDefinition(Part):
     outage: Annotated[Outage, Ask("The outage")] = Outage()
 
     def given_but_unused(self) -> tuple[str, ...]:
-        """Fields that were given and are described, but change no answer yet."""
+        """Fields that were given and are described, but change no answer of this store."""
         found = []
         for where in ("room", "outdoors"):
             history = getattr(self.surroundings, where)
-            for name in ("relative_humidity", "volume_m3", "air_changes_per_h"):
-                if history is not None and getattr(history, name) is not None:
-                    found.append(f"surroundings.{where}.{name}")
+            for path, place in _places(f"surroundings.{where}", history):
+                found += [f"{path}.{name}" for name in _NOT_USED_OF_PLACES if getattr(place, name) is not None]
+        faces = self.enclosure.faces
+        beyond = () if faces is None else (faces.walls.beyond, faces.ceiling.beyond, faces.floor.beyond)
+        if self.surroundings.outdoors is not None and "outdoors" not in beyond:
+            found.append("surroundings.outdoors")
+        overall = self.enclosure.overall
+        if overall is not None and not isinstance(overall, KValue):
+            found += [f"enclosure.overall.{name}" for name in _USED_FOR_K if getattr(overall, name) is not None]
         return tuple(found)
+
+
+_NOT_USED_OF_PLACES = ("relative_humidity", "volume_m3", "air_changes_per_h")
+_USED_FOR_K = ("inside_area_m2", "wall_thickness_m")
+
+
+def _places(path: str, history: Any) -> Iterator[tuple[str, Any]]:
+    """A history and the one that it drifts towards, with their paths."""
+    if history is not None:
+        yield path, history
+        yield from _places(f"{path}.towards", getattr(history, "towards", None))

@@ -30,14 +30,33 @@ Number = Annotated[float, Field(strict=True, allow_inf_nan=False)]
 Whole = Annotated[int, Field(strict=True)]
 
 
+NAME = Field(min_length=1, max_length=80, pattern=r"^[^\x00-\x1f]*[^\x00-\x20][^\x00-\x1f]*$")
+"""A name that people read: one line, and not blank."""
+
+
 class Part(BaseModel):
     """Base of every part of a definition: unknown fields are refused, nothing changes after reading."""
 
     model_config = ConfigDict(extra="forbid", frozen=True, allow_inf_nan=False)
 
 
+def _bare_or_object(schema: dict[str, Any]) -> None:
+    """Let the JSON schema of a quantity say that a bare number will do."""
+    whole = dict(schema)
+    schema.clear()
+    schema.update(
+        {
+            "title": whole.pop("title"),
+            "description": whole.pop("description"),
+            "anyOf": [{"type": "number"}, whole],
+        }
+    )
+
+
 class Quantity(Part):
     """A number, given bare or with its spread or with how it is known."""
+
+    model_config = ConfigDict(json_schema_extra=_bare_or_object)
 
     value: Number
     plus_minus: Annotated[float, Field(strict=True, ge=0.0)] | None = None
@@ -89,25 +108,34 @@ class Ask:
         words = f"{self.label}. {self.hint}".strip()
         if self.low is not None or self.high is not None:
             words += f" Allowed: {self.allowed}."
+            numbers = described["items"] = dict(described["items"]) if "items" in described else described
+            bounds = {"minimum": self.low, "maximum": self.high}
+            numbers |= {name: bound for name, bound in bounds.items() if bound is not None}
         described["description"] = words
         return described
 
     def _checked(self, given: Any) -> Any:
-        number = given.value if isinstance(given, Quantity) else given
-        if number is None:
-            return given
-        if (self.low is not None and number < self.low) or (self.high is not None and number > self.high):
-            raise PydanticCustomError(
-                "out_of_range",
-                "{label} is {number}; it must be {allowed}.{slip}",
-                {
-                    "label": self.label,
-                    "number": f"{number:g}",
-                    "allowed": self.allowed,
-                    "slip": self._slip(number),
-                },
-            )
+        """The same value, or the fault of the first number in it that is out of range."""
+        numbers = given if isinstance(given, tuple) else (given,)
+        for k, part in enumerate(numbers):
+            number = part.value if isinstance(part, Quantity) else part
+            if number is not None and not self._fits(number):
+                which = f", number {k + 1}," if isinstance(given, tuple) else ""
+                raise self._out_of_range(which, number)
         return given
+
+    def _out_of_range(self, which: str, number: float) -> PydanticCustomError:
+        return PydanticCustomError(
+            "out_of_range",
+            "{label}{which} is {number}; it must be {allowed}.{slip}",
+            {
+                "label": self.label,
+                "which": which,
+                "number": f"{number:g}",
+                "allowed": self.allowed,
+                "slip": self._slip(number),
+            },
+        )
 
     def _fits(self, number: float) -> bool:
         return (self.low is None or number >= self.low) and (self.high is None or number <= self.high)
@@ -117,6 +145,8 @@ class Ask:
         for unit, factor, meant in _SLIPS:
             if self.unit == unit and self._fits(number * factor):
                 return f" Did you enter {meant}?"
+        if self.high == 1.0 and self.unit == "" and self._fits(number / 100.0):
+            return " Did you enter per cent?"
         if self.unit == "°C" and self._fits(celsius_from_fahrenheit(number)):
             return " Did you enter °F?"
         return ""
@@ -126,7 +156,9 @@ _SLIPS = (
     ("m", 0.001, "mm"),
     ("m", 0.01, "cm"),
     ("kg", 0.001, "grams"),
-    ("", 0.01, "per cent"),
+    ("kg/m³", 1000.0, "grams per cubic centimetre"),
+    ("J/kg·K", 1000.0, "kilojoules"),
+    ("J/kg", 1000.0, "kilojoules"),
     ("h", 1.0 / 60.0, "minutes"),
     ("kWh/day", 0.001, "Wh"),
     ("kWh/day", 1.0 / 365.0, "kWh per year"),

@@ -1,15 +1,14 @@
-"""What must fit together in a definition whose single fields are right, and what is not worked out yet.
+"""What must fit together in a definition whose single fields are right.
 
-Each check looks at one thing and yields faults with the path of the field to change. Called by ``reading``.
+Each check looks at one thing and yields faults with the path of the field to change. Volumes and what is not
+worked out yet have modules of their own, ``volumes`` and ``later``. Called by ``reading``.
 """
 
 from __future__ import annotations
 
-import math
 from collections.abc import Callable, Iterator
-from typing import Any
 
-from app.errors import FieldFault, UnknownKey
+from app.errors import FieldFault
 from app.reference import coolant_material, food, limit_preset, material
 from app.stores.definition import (
     Contents,
@@ -17,16 +16,23 @@ from app.stores.definition import (
     DriftHistory,
     EnergyUse,
     Face,
-    Limit,
+    Layer,
     RiseTime,
     SeriesHistory,
     StoreDefinition,
 )
-from app.stores.geometry import box_faces, cylinder_faces
+from app.stores.later import Faults, known_key, later, limits_of, not_yet
+from app.stores.volumes import sizes
 
-_PLAUSIBLE_KG_PER_M3 = (20.0, 8000.0)
+_LEAST_J_PER_KG_K = 100.0
+"""Below the specific heat of every solid and liquid that is stored cold (lead 128 J/kg·K, from memory)."""
 
-Faults = Iterator[FieldFault]
+_INSULATION_AT_MOST_W_PER_M_K = 5.0
+_METAL_AT_LEAST_KG_PER_M3 = 1500.0
+_THICK_FOR_METAL_M = 0.03
+
+_CLOSEST_TIMES_H = 1e-6
+"""Closer times are one time twice; a few milliseconds make a sudden change."""
 
 
 def faults_together(definition: StoreDefinition) -> list[FieldFault]:
@@ -50,63 +56,80 @@ def _ways(definition: StoreDefinition) -> Faults:
 
 
 def _face_ways(path: str, face: Face, definition: StoreDefinition) -> Faults:
-    if (face.layers is None or not face.layers) == (face.u_w_per_m2_k is None):
+    if (face.layers is None) == (face.u_w_per_m2_k is None):
         yield FieldFault(path, "Give either layers or a U-value.", None, "one of the two")
+    elif face.u_w_per_m2_k is not None and face.films_w_per_m2_k is not None:
+        message = "A U-value has the films in it already: leave them out, or give layers."
+        yield FieldFault(f"{path}.films_w_per_m2_k", message, None, "left out beside a U-value")
     for j, layer in enumerate(face.layers or ()):
-        own = layer.conductivity_w_per_m_k is not None
-        if own == (layer.material is not None):
-            yield FieldFault(
-                f"{path}.layers[{j}].material",
-                "Give either a material or the layer's own conductivity.",
-                layer.material,
-                "one of the two",
-            )
-        if (layer.density_kg_per_m3 is None) != (layer.specific_heat_j_per_kg_k is None):
-            yield FieldFault(
-                f"{path}.layers[{j}].density_kg_per_m3",
-                "Give density and specific heat together, or neither.",
-                None,
-                "both or neither",
-            )
-        if layer.material is not None:
-            yield from _known(f"{path}.layers[{j}].material", material, layer.material)
+        yield from _layer_ways(f"{path}.layers[{j}]", layer)
     if face.beyond == "outdoors" and definition.surroundings.outdoors is None:
         yield FieldFault(f"{path}.beyond", "Give surroundings.outdoors for a face outdoors.", "outdoors", "room")
     if face.beyond == "ground":
-        yield _not_yet(f"{path}.beyond", "A floor on the ground", "ground")
+        yield not_yet(f"{path}.beyond", "A floor on the ground", "ground")
+
+
+def _layer_ways(path: str, layer: Layer) -> Faults:
+    """A material of the table or the layer's own numbers, and those like something that exists."""
+    conductivity, density = layer.conductivity_w_per_m_k, layer.density_kg_per_m3
+    if (conductivity is None) == (layer.material is None):
+        message = "Give either a material or the layer's own conductivity."
+        yield FieldFault(f"{path}.material", message, layer.material, "one of the two")
+    elif layer.material is not None:
+        yield from known_key(f"{path}.material", material, layer.material)
+        for name in ("density_kg_per_m3", "specific_heat_j_per_kg_k"):
+            given = getattr(layer, name)
+            if given is not None:
+                message = "A material brings its own. Leave it out, or give all three numbers in place of the material."
+                yield FieldFault(f"{path}.{name}", message, given.value, "left out beside a material")
+    elif (density is None) != (layer.specific_heat_j_per_kg_k is None):
+        message = "Give density and specific heat together, or neither."
+        yield FieldFault(f"{path}.density_kg_per_m3", message, None, "both or neither")
+    elif conductivity is not None and conductivity.value > _INSULATION_AT_MOST_W_PER_M_K:
+        is_light = density is not None and density.value < _METAL_AT_LEAST_KG_PER_M3
+        if is_light or (density is None and layer.thickness_m.value >= _THICK_FOR_METAL_M):
+            message = (
+                f"{conductivity.value:g} W/m·K is a metal's, and this layer is too light or too thick for one. "
+                "Did you enter mW/m·K?"
+            )
+            allowed = f"at most {_INSULATION_AT_MOST_W_PER_M_K:g} W/m·K in such a layer"
+            yield FieldFault(f"{path}.conductivity_w_per_m_k", message, conductivity.value, allowed)
 
 
 def _contents_ways(path: str, contents: Contents) -> Faults:
     given = [name for name in ("food", "composition", "substance") if getattr(contents, name) is not None]
     if len(given) != 1:
-        yield FieldFault(
-            f"{path}.food",
-            "Give what it is: a food, a composition or a substance, one of them.",
-            ", ".join(given),
-            "one of food, composition, substance",
-        )
-    if contents.composition is not None and contents.initial_freezing_c is None:
-        yield FieldFault(
-            f"{path}.initial_freezing_c",
-            "A composition needs the temperature where freezing begins.",
-            None,
-            "-38 to -0.05 °C",
-        )
-    if contents.substance == "aqueous" and contents.freezing_c is None:
-        yield FieldFault(f"{path}.freezing_c", "A solution needs its freezing point.", None, "-38 to 0 °C")
+        message = "Give what it is: a food, a composition or a substance, one of them."
+        yield FieldFault(f"{path}.food", message, ", ".join(given), "one of food, composition, substance")
+    yield from _freezing(path, contents)
     if contents.food is not None:
-        yield from _known(f"{path}.food", food, contents.food)
+        yield from known_key(f"{path}.food", food, contents.food)
     for j, packaging in enumerate(contents.packaging):
-        yield from _known(f"{path}.packaging[{j}].material", material, packaging.material)
+        yield from known_key(f"{path}.packaging[{j}].material", material, packaging.material)
     if contents.composition is not None:
         shares = contents.composition
         total = sum(getattr(shares, name).value for name in type(shares).model_fields)
         if not 0.95 <= total <= 1.05:
-            yield FieldFault(
-                f"{path}.composition", f"The fractions add up to {total:.3g}.", total, "a sum of 0.95 to 1.05"
-            )
+            message = f"The fractions add up to {total:.3g}."
+            yield FieldFault(f"{path}.composition", message, total, "a sum of 0.95 to 1.05")
     if isinstance(contents.substance, CurveSubstance):
         yield from _curve(f"{path}.substance", contents.substance)
+
+
+def _freezing(path: str, contents: Contents) -> Faults:
+    """A freezing point where one is needed, and none where it would change nothing."""
+    initial, point = contents.initial_freezing_c, contents.freezing_c
+    if contents.composition is not None and initial is None:
+        message = "A composition needs the temperature where freezing begins."
+        yield FieldFault(f"{path}.initial_freezing_c", message, None, "-38 to -0.05 °C")
+    if contents.composition is None and initial is not None:
+        message = "Only a composition takes the temperature where freezing begins; a food of the table brings its own."
+        yield FieldFault(f"{path}.initial_freezing_c", message, initial.value, "left out")
+    if contents.substance == "aqueous" and point is None:
+        yield FieldFault(f"{path}.freezing_c", "A solution needs its freezing point.", None, "-38 to 0 °C")
+    if contents.substance != "aqueous" and point is not None:
+        message = "Only an aqueous substance takes a freezing point."
+        yield FieldFault(f"{path}.freezing_c", message, point.value, "left out")
 
 
 def _curve(path: str, curve: CurveSubstance) -> Faults:
@@ -119,8 +142,12 @@ def _curve(path: str, curve: CurveSubstance) -> Faults:
             f"{len(temperatures)} values",
         )
         return
-    if any(b <= a for a, b in zip(heats[:-1], heats[1:], strict=True)):
+    steps = list(zip(temperatures[:-1], temperatures[1:], heats[:-1], heats[1:], strict=True))
+    if any(h1 <= h0 for _, _, h0, h1 in steps):
         yield FieldFault(f"{path}.enthalpy_j_per_kg", "Enthalpies must rise.", None, "rising values")
+    elif any(h1 - h0 < _LEAST_J_PER_KG_K * (t1 - t0) for t0, t1, h0, h1 in steps):
+        message = "Enthalpies rise more slowly than those of any substance. Did you enter kJ/kg?"
+        yield FieldFault(f"{path}.enthalpy_j_per_kg", message, None, f"at least {_LEAST_J_PER_KG_K:g} J/kg for each K")
     falls = any(b < a for a, b in zip(temperatures[:-1], temperatures[1:], strict=True))
     if falls or temperatures[0] == temperatures[1] or temperatures[-1] == temperatures[-2]:
         yield FieldFault(
@@ -136,31 +163,36 @@ def _names(definition: StoreDefinition) -> Faults:
     for k, coolant in enumerate(definition.coolants):
         path = f"coolants[{k}].coolant"
         if coolant.coolant == "dry_ice":
-            yield _not_yet(path, "Dry ice", coolant.coolant)
+            yield not_yet(path, "Dry ice", coolant.coolant)
         else:
-            yield from _known(path, coolant_material, coolant.coolant)
+            yield from known_key(path, coolant_material, coolant.coolant)
     for k, fitting in enumerate(definition.enclosure.fittings):
-        yield from _known(f"enclosure.fittings[{k}].material", material, fitting.material)
+        yield from known_key(f"enclosure.fittings[{k}].material", material, fitting.material)
     overall = definition.enclosure.overall
     if isinstance(overall, RiseTime):
-        yield from _known("enclosure.overall.test_load_food", food, overall.test_load_food)
-    for path, limit in _limits(definition):
+        yield from known_key("enclosure.overall.test_load_food", food, overall.test_load_food)
+    for path, limit in limits_of(definition):
         if limit.kind == "preset":
-            yield from _known(f"{path}.preset", limit_preset, limit.preset)
+            yield from known_key(f"{path}.preset", limit_preset, limit.preset)
+    things = [(f"contents[{k}].name", c.name) for k, c in enumerate(definition.contents)]
+    things += [(f"coolants[{k}].name", c.name) for k, c in enumerate(definition.coolants)]
+    yield from _told_apart("things", things)
+    openings = enumerate(definition.enclosure.openings)
+    yield from _told_apart("openings", [(f"enclosure.openings[{k}].name", opening.name) for k, opening in openings])
+
+
+def _told_apart(what: str, named: list[tuple[str, str]]) -> Faults:
     seen: set[str] = set()
-    named = [(f"contents[{k}].name", c.name) for k, c in enumerate(definition.contents)]
-    named += [(f"coolants[{k}].name", c.name) for k, c in enumerate(definition.coolants)]
     for path, name in named:
         if name in seen:
-            yield FieldFault(
-                path, f"There are two things called {name!r}. Give each its own name.", name, "another name"
-            )
+            message = f"There are two {what} called {name!r}. Give each its own name."
+            yield FieldFault(path, message, name, "another name")
         seen.add(name)
 
 
 def _limits_given(definition: StoreDefinition) -> Faults:
     """Something must be asked, and the air has no middle and no ice."""
-    if not any(True for _ in _limits(definition)):
+    if not any(True for _ in limits_of(definition)):
         yield FieldFault(
             "contents[0].limits",
             "Give at least one limit: without one nothing ends.",
@@ -175,64 +207,6 @@ def _limits_given(definition: StoreDefinition) -> Faults:
                 "thawed",
                 "above, below, mean_kinetic or a preset",
             )
-
-
-def _sizes(definition: StoreDefinition) -> Faults:
-    """Openings fit their faces; contents fit the inside and weigh what such a volume can."""
-    inside = definition.enclosure.inside_m
-    if hasattr(inside, "diameter"):
-        sizes = cylinder_faces(inside.diameter.value, inside.height.value)
-        volume = sizes["floor"].inside_m2 * inside.height.value
-    else:
-        sizes = box_faces(inside.width.value, inside.depth.value, inside.height.value)
-        volume = inside.width.value * inside.depth.value * inside.height.value
-    openings: dict[str, float] = {}
-    for k, opening in enumerate(definition.enclosure.openings):
-        area = opening.width_m.value * opening.height_m.value
-        openings[opening.in_face] = openings.get(opening.in_face, 0.0) + area
-        room = sizes[opening.in_face].inside_m2
-        if openings[opening.in_face] > room:
-            yield FieldFault(
-                f"enclosure.openings[{k}].width_m",
-                f"The openings are larger than the {opening.in_face}.",
-                opening.width_m.value,
-                f"at most {room:.3g} m² together",
-            )
-    total = 0.0
-    for k, contents in enumerate(definition.contents):
-        stacked = _stacked_m3(contents)
-        if stacked is None:
-            continue
-        total += stacked
-        low, high = _PLAUSIBLE_KG_PER_M3
-        mass = contents.mass_kg.value
-        if not low <= mass / stacked <= high:
-            yield FieldFault(
-                f"contents[{k}].mass_kg",
-                f"{mass:g} kg in {stacked:.3g} m³ is {mass / stacked:.3g} kg/m³. Check the mass, the count and the "
-                "dimensions.",
-                mass,
-                f"{low * stacked:.3g} to {high * stacked:.3g} kg in this volume",
-            )
-        if total > volume * 1.001:
-            yield FieldFault(
-                f"contents[{k}].stacking",
-                f"The contents take {total:.3g} m³; inside there are {volume:.3g} m³.",
-                None,
-                "what fits inside",
-            )
-
-
-def _stacked_m3(contents: Contents) -> float | None:
-    """Volume that the contents take, where their stacking tells it."""
-    stacking: Any = contents.stacking
-    if stacking.kind == "exposed":
-        return None
-    count = getattr(stacking, "count", 1)
-    if stacking.kind in ("bottles", "carcass"):
-        length = stacking.height_m if stacking.kind == "bottles" else stacking.length_m
-        return float(count * math.pi / 4.0 * stacking.diameter_m.value**2 * length.value)
-    return float(count * stacking.width_m.value * stacking.depth_m.value * stacking.height_m.value)
 
 
 def _histories(definition: StoreDefinition) -> Faults:
@@ -264,59 +238,15 @@ def _histories(definition: StoreDefinition) -> Faults:
 
 
 def _series(path: str, series: SeriesHistory) -> Faults:
-    if len(series.time_h) != len(series.temperature_c):
-        yield FieldFault(
-            f"{path}.temperature_c",
-            "Give as many temperatures as times.",
-            len(series.temperature_c),
-            f"{len(series.time_h)} values",
-        )
-    if any(b <= a for a, b in zip(series.time_h[:-1], series.time_h[1:], strict=True)):
-        yield FieldFault(f"{path}.time_h", "Times must rise.", None, "rising values")
-    if series.time_h[0] < 0.0:
-        yield FieldFault(f"{path}.time_h", "Times count from the loss of power.", series.time_h[0], "0 or later")
-    if not all(-90.0 <= value <= 90.0 for value in series.temperature_c):
-        yield FieldFault(f"{path}.temperature_c", "Temperatures are out of range.", None, "-90 to 90 °C")
-
-
-def _later(definition: StoreDefinition) -> Faults:
-    """What the contract knows and this version does not work out yet."""
-    for k, opening in enumerate(definition.enclosure.openings):
-        if opening.curtain_effectiveness is not None and opening.curtain_effectiveness.value > 0.0:
-            yield _not_yet(
-                f"enclosure.openings[{k}].curtain_effectiveness",
-                "A curtain",
-                opening.curtain_effectiveness.value,
-            )
-    for k, contents in enumerate(definition.contents):
-        if contents.place != "middle":
-            yield _not_yet(f"contents[{k}].place", "Warmer and colder places in the store", contents.place)
-    for k, coolant in enumerate(definition.coolants):
-        if coolant.added_at_h > 0.0:
-            yield _not_yet(f"coolants[{k}].added_at_h", "A coolant added during the outage", coolant.added_at_h)
-        if coolant.wrapping_w_per_k is not None:
-            yield _not_yet(f"coolants[{k}].wrapping_w_per_k", "Wrapping of a coolant", coolant.wrapping_w_per_k.value)
-    for path, limit in _limits(definition):
-        if limit.kind == "growth":
-            yield _not_yet(f"{path}.kind", "Growth of organisms", "growth")
-    for name, what in (("ground", "A floor on the ground"), ("sun", "Sun on roof and walls")):
-        if getattr(definition.surroundings, name) is not None:
-            yield _not_yet(f"surroundings.{name}", what, "given")
-    for name, what in (("door_openings", "Door openings"), ("power", "A generator, or power back")):
-        if getattr(definition.outage, name):
-            yield _not_yet(f"outage.{name}", what, "given")
-
-
-def _not_yet(path: str, what: str, given: object) -> FieldFault:
-    return FieldFault(path, f"{what}: not worked out yet. Leave it out for now.", given, "left out")
-
-
-def _known(path: str, look_up: Callable[[str], object], key: str) -> Faults:
-    try:
-        look_up(key)
-    except UnknownKey as unknown:
-        nearest = f"nearest: {', '.join(unknown.nearest)}" if unknown.nearest else "a name of the table"
-        yield FieldFault(path, str(unknown), key, nearest)
+    times = series.time_h
+    for name in ("temperature_c", "relative_humidity"):
+        values = getattr(series, name)
+        if values is not None and len(values) != len(times):
+            words = "Give as many values as times."
+            yield FieldFault(f"{path}.{name}", words, len(values), f"{len(times)} values")
+    if any(b - a < _CLOSEST_TIMES_H for a, b in zip(times[:-1], times[1:], strict=True)):
+        allowed = f"rising values, at least {_CLOSEST_TIMES_H:.6f} h apart"
+        yield FieldFault(f"{path}.time_h", "Times must rise.", None, allowed)
 
 
 def _faces(definition: StoreDefinition) -> Iterator[tuple[str, Face]]:
@@ -325,19 +255,11 @@ def _faces(definition: StoreDefinition) -> Iterator[tuple[str, Face]]:
         yield from (("walls", faces.walls), ("ceiling", faces.ceiling), ("floor", faces.floor))
 
 
-def _limits(definition: StoreDefinition) -> Iterator[tuple[str, Limit]]:
-    for k, contents in enumerate(definition.contents):
-        for j, limit in enumerate(contents.limits):
-            yield f"contents[{k}].limits[{j}]", limit
-    for k, limit in enumerate(definition.air_limits):
-        yield f"air_limits[{k}]", limit
-
-
 _CHECKS: tuple[Callable[[StoreDefinition], Faults], ...] = (
     _ways,
     _names,
     _limits_given,
-    _sizes,
+    sizes,
     _histories,
-    _later,
+    later,
 )
