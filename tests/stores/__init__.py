@@ -1,0 +1,1 @@
+"""Tests of the store definitions and of the networks made of them."""
