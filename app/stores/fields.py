@@ -125,6 +125,8 @@ class Ask:
         return given
 
     def _out_of_range(self, which: str, number: float) -> PydanticCustomError:
+        # a whole number may be larger than any float
+        number = float(max(min(number, 1e308), -1e308))
         return PydanticCustomError(
             "out_of_range",
             "{label}{which} is {number}; it must be {allowed}.{slip}",
@@ -141,15 +143,13 @@ class Ask:
         return (self.low is None or number >= self.low) and (self.high is None or number <= self.high)
 
     def _slip(self, number: float) -> str:
-        """The unit that the person may have meant."""
-        for unit, factor, meant in _SLIPS:
-            if self.unit == unit and self._fits(number * factor):
-                return f" Did you enter {meant}?"
+        """The units that the person may have meant."""
+        meant = [unit for own, factor, unit in _SLIPS if self.unit == own and self._fits(number * factor)]
         if self.high == 1.0 and self.unit == "" and self._fits(number / 100.0):
-            return " Did you enter per cent?"
+            meant.append("per cent")
         if self.unit == "°C" and self._fits(celsius_from_fahrenheit(number)):
-            return " Did you enter °F?"
-        return ""
+            meant.append("°F")
+        return f" Did you enter {' or '.join(meant)}?" if meant else ""
 
 
 _SLIPS = (

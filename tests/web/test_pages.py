@@ -127,7 +127,7 @@ def test_bad_input_is_answered_with_all_faults_at_once_and_everything_typed_stil
     for fault in response.context["page"].form.faults:
         assert f"#{fault.path}" in page.hrefs
         assert fault.path in page.ids
-        assert response.text.count("Did you enter mm?") == 2  # in the summary, and by the field
+        assert response.text.count("Did you enter mm or cm?") == 2  # in the summary, and by the field
     wrong = [one for one in page.fields if one.attributes.get("aria-invalid") == "true"]
     assert [one.attributes["aria-describedby"].split()[-1] for one in wrong] == [
         f"{one.attributes['id']}.error" for one in wrong
