@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Callable, Iterator
 
 from app.errors import FieldFault
-from app.reference import coolant_material, food, limit_preset, material
+from app.reference import coolant_material, food, limit_preset, material, materials
 from app.stores.definition import (
     Contents,
     CurveSubstance,
@@ -77,6 +77,7 @@ def _layer_ways(path: str, layer: Layer) -> Faults:
         yield FieldFault(f"{path}.material", message, layer.material, "one of the two")
     elif layer.material is not None:
         yield from known_key(f"{path}.material", material, layer.material)
+        yield from _metal_thickness(f"{path}.thickness_m", layer.material, layer.thickness_m.value)
         for name in ("density_kg_per_m3", "specific_heat_j_per_kg_k"):
             given = getattr(layer, name)
             if given is not None:
@@ -94,6 +95,14 @@ def _layer_ways(path: str, layer: Layer) -> Faults:
             )
             allowed = f"at most {_INSULATION_AT_MOST_W_PER_M_K:g} W/m·K in such a layer"
             yield FieldFault(f"{path}.conductivity_w_per_m_k", message, conductivity.value, allowed)
+
+
+def _metal_thickness(path: str, key: str, thickness_m: float) -> Faults:
+    """A sheet of metal as thick as a panel would store more heat than all that is inside."""
+    is_metal = any(row.key == key and row.conductivity_w_per_m_k > _INSULATION_AT_MOST_W_PER_M_K for row in materials())
+    if is_metal and thickness_m >= _THICK_FOR_METAL_M:
+        message = f"{thickness_m:g} m is too thick for a sheet of metal. Did you enter mm?"
+        yield FieldFault(path, message, thickness_m, f"less than {_THICK_FOR_METAL_M:g} m of metal")
 
 
 def _contents_ways(path: str, contents: Contents) -> Faults:
