@@ -83,12 +83,7 @@ class Baseline:
         conductance[series] = 1.0 / (b["resistance_k_per_w"] + path)[series]
         film = b["link"] == FILM
         if film.any():
-            f, own_k, other_k = b[film], own[film] + ZERO_CELSIUS_K, other[film] + ZERO_CELSIUS_K
-            rise = np.abs(other[film] - own[film]) ** np.where(f["is_sixth"] > 0.0, 1.0 / 6.0, 1.0 / 8.0)
-            warmth = 1.0 - f["per_k"] * (0.5 * (own[film] + other[film]) - f["reference_c"])
-            convection = (f["base"] + f["gain"] * rise) ** 2 * warmth
-            radiation = STEFAN_BOLTZMANN_W_PER_M2_K4 * f["emissivity"] * (own_k**2 + other_k**2) * (own_k + other_k)
-            conductance[film] = 1.0 / (1.0 / (f["area_m2"] * (convection + radiation)) + path[film])
+            conductance[film] = _film_conductance(b[film], own[film], other[film], path[film])
         flow = conductance * (other - own)
         rate = np.zeros(self.n)
         rate[1:] += flow
@@ -124,3 +119,18 @@ class Baseline:
         )
         found = done.t_events[0]
         return Result(float(found[0]) if len(found) else np.nan, int(done.nfev))
+
+
+def _film_conductance(b: np.ndarray, own: np.ndarray, air: np.ndarray, path: np.ndarray) -> np.ndarray:
+    """Conductance from the air into each body: film at the surface, behind it the path to the body's middle."""
+    surface = own
+    exponent = np.where(b["is_sixth"] > 0.0, 1.0 / 6.0, 1.0 / 8.0)
+    for _ in range(4):
+        rise = np.abs(air - surface) ** exponent
+        warmth = 1.0 - b["per_k"] * (0.5 * (surface + air) - b["reference_c"])
+        convection = (b["base"] + b["gain"] * rise) ** 2 * warmth
+        one, two = surface + ZERO_CELSIUS_K, air + ZERO_CELSIUS_K
+        radiation = STEFAN_BOLTZMANN_W_PER_M2_K4 * b["emissivity"] * (one**2 + two**2) * (one + two)
+        film = b["area_m2"] * (convection + radiation)
+        surface = own + (air - own) * path / (path + 1.0 / film)
+    return 1.0 / (1.0 / film + path)
