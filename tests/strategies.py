@@ -54,9 +54,10 @@ def definitions(draw: st.DrawFn, *, by_rise_time: bool = False) -> Document:
         enclosure["edge_factors"] = draw(st.booleans())
     else:
         enclosure["overall"] = draw(_overalls(inside_m3, by_rise_time))
-    enclosure["openings"] = draw(_openings())
-    if draw(st.booleans()):
-        enclosure["bridges_w_per_k"] = draw(quantities(0.0, 2.0))
+    if not by_rise_time:  # doors that leak more than a rise time allows are refused
+        enclosure["openings"] = draw(_openings())
+        if draw(st.booleans()):
+            enclosure["bridges_w_per_k"] = draw(quantities(0.0, 2.0))
     enclosure["fittings"] = [
         {"material": draw(st.sampled_from(_MATERIALS)), "mass_kg": draw(quantities(0.5, 30.0))}
         for _ in range(draw(st.integers(0, 2)))

@@ -52,7 +52,8 @@ def test_every_valid_store_is_answered_whole(document):
     told = answer.as_document()
     json.dumps(told, allow_nan=False)
     assert all(math.isfinite(number) for number in numbers_in(told))
-    assert answer.energy_balance_error < 1e-9  # the engine refuses a run above this
+    # a share of the heat that moved; where none does, of the rounding of the heat that is stored
+    assert answer.energy_balance_error < (1e-9 if abs(answer.heat_in.total_j) > 1.0 else 1e-7)
     check_statuses(answer)
 
 

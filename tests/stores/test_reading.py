@@ -262,16 +262,18 @@ def without(document: Document, keys: Keys) -> Document:
 
 def faults_of(document: Any) -> tuple[FieldFault, ...]:
     """The faults of a document; none when it is valid. Every other exception is a fault of the reader."""
+    faults: tuple[FieldFault, ...] = ()
     try:
         read_definition(document)
+        return ()
     except DefinitionRefused as refused:
-        assert refused.faults
-        json.dumps([vars(fault) for fault in refused.faults], allow_nan=False)
-        for fault in refused.faults:
-            assert fault.message.endswith((".", "?"))
-            assert fault.allowed
-        return refused.faults
-    return ()
+        faults = refused.faults
+    assert faults
+    json.dumps([vars(fault) for fault in faults], allow_nan=False)
+    for fault in faults:
+        assert fault.message.endswith((".", "?"))
+        assert fault.allowed
+    return faults
 
 
 def is_near(fault: FieldFault, path: str) -> bool:
