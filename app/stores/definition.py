@@ -11,7 +11,7 @@ from typing import Annotated, Any, Literal
 
 from pydantic import Discriminator, Field, Tag
 
-from app.stores.fields import NAME, Ask, Number, Part, Quantity, Whole
+from app.stores.fields import KEY, NAME, Ask, Number, Part, Quantity, Whole
 
 # A length, mass or temperature that many fields share; each use gives its own label.
 
@@ -66,7 +66,7 @@ class Layer(Part):
     """One layer of a face: a material of the table, or its own numbers."""
 
     thickness_m: Annotated[Quantity, _length("Thickness of the layer", 0.00005, 1.5)]
-    material: Annotated[str | None, Ask("Material")] = None
+    material: Annotated[str | None, Ask("Material"), KEY] = None
     conductivity_w_per_m_k: Annotated[Quantity | None, _CONDUCTIVITY] = None
     density_kg_per_m3: Annotated[Quantity | None, _DENSITY] = None
     specific_heat_j_per_kg_k: Annotated[Quantity | None, _SPECIFIC_HEAT] = None
@@ -151,7 +151,7 @@ class RiseTime(_OverallPart):
     to_c: Annotated[Quantity, _temperature("To")]
     at_room_c: Annotated[Quantity, _temperature("Room in the test", 0.0, 50.0)]
     test_load_kg: Annotated[Quantity, Ask("Test load", "kg", "kilograms", 0.1, 100000.0)]
-    test_load_food: Annotated[str, Ask("What the test load is")] = "test_package"
+    test_load_food: Annotated[str, Ask("What the test load is"), KEY] = "test_package"
 
 
 _OVERALL_MARKS = {
@@ -193,7 +193,7 @@ class Opening(Part):
 class Fitting(Part):
     """Racks, liner, coil: bare material inside that must warm too."""
 
-    material: Annotated[str, Ask("Material")]
+    material: Annotated[str, Ask("Material"), KEY]
     mass_kg: Annotated[Quantity, _MASS]
 
 
@@ -244,12 +244,12 @@ class CurveSubstance(Part):
     """Something whose enthalpy was measured: increasing, straight between its points."""
 
     temperature_c: Annotated[
-        tuple[Number, ...], _temperature("Temperatures", -150.0, 150.0), Field(min_length=2, max_length=200)
+        tuple[Number, ...], Field(min_length=2, max_length=200), _temperature("Temperatures", -150.0, 150.0)
     ]
     enthalpy_j_per_kg: Annotated[
         tuple[Number, ...],
-        Ask("Enthalpies", "J/kg", "joules per kilogram", -1e7, 1e7),
         Field(min_length=2, max_length=200),
+        Ask("Enthalpies", "J/kg", "joules per kilogram", -1e7, 1e7),
     ]
     conductivity_w_per_m_k: Annotated[Number, _CONDUCTIVITY]
     density_kg_per_m3: Annotated[Number, _DENSITY]
@@ -347,7 +347,7 @@ Stacking = Annotated[Packs | Cartons | Pallet | Carcass | Bottles | Bulk | Expos
 class Packaging(Part):
     """Boxes, bottles, pallets: material that warms with the contents."""
 
-    material: Annotated[str, Ask("Material")]
+    material: Annotated[str, Ask("Material"), KEY]
     mass_kg: Annotated[Quantity, _MASS]
 
 
@@ -359,7 +359,7 @@ class PresetLimit(Part):
     """A published limit, by its name in the table."""
 
     kind: Literal["preset"] = "preset"
-    preset: Annotated[str, Ask("Published limit")]
+    preset: Annotated[str, Ask("Published limit"), KEY]
 
 
 class AboveLimit(Part):
@@ -403,7 +403,7 @@ class GrowthLimit(Part):
     """Predicted growth of an organism: known to the contract, not worked out yet."""
 
     kind: Literal["growth"]
-    organism: Annotated[str, Ask("Organism")]
+    organism: Annotated[str, Ask("Organism"), KEY]
     log10: Annotated[Number, Ask("Growth", "log10", "", 0.0, 12.0)]
 
 
@@ -429,7 +429,7 @@ class Contents(Part):
     """One item or lot: what it is, how much, how it stands, what it must not pass."""
 
     name: Annotated[str, Ask("Name"), NAME]
-    food: Annotated[str | None, Ask("Food of the table")] = None
+    food: Annotated[str | None, Ask("Food of the table"), KEY] = None
     composition: Annotated[Composition | None, Ask("Composition")] = None
     initial_freezing_c: Annotated[Quantity | None, _temperature("Freezing begins at", -38.0, -0.05)] = None
     substance: Annotated[Substance | None, Ask("Substance")] = None
@@ -447,7 +447,7 @@ class Coolant(Part):
     """Ice, packs and plates that take up heat."""
 
     name: Annotated[str, Ask("Name"), NAME]
-    coolant: Annotated[str, Ask("Coolant of the table")]
+    coolant: Annotated[str, Ask("Coolant of the table"), KEY]
     mass_kg: Annotated[Quantity, _MASS]
     start_c: Annotated[Quantity | None, _temperature("Temperature at the start")] = None
     area_m2: Annotated[Quantity | None, Ask("Area in the air", "m²", "square metres", 0.0001, 10000.0)] = None
@@ -502,12 +502,12 @@ class SeriesHistory(_Place):
     """Temperatures at times, straight between them."""
 
     kind: Literal["series"]
-    time_h: Annotated[tuple[Number, ...], _hours("Times"), Field(min_length=2, max_length=20000)]
+    time_h: Annotated[tuple[Number, ...], Field(min_length=2, max_length=20000), _hours("Times")]
     temperature_c: Annotated[
-        tuple[Number, ...], _temperature("Temperatures", -60.0, 70.0), Field(min_length=2, max_length=20000)
+        tuple[Number, ...], Field(min_length=2, max_length=20000), _temperature("Temperatures", -60.0, 70.0)
     ]
     relative_humidity: Annotated[
-        tuple[Number, ...] | None, _fraction("Relative humidity at those times"), Field(max_length=20000)
+        tuple[Number, ...] | None, Field(max_length=20000), _fraction("Relative humidity at those times")
     ] = None
 
 

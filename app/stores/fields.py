@@ -33,6 +33,9 @@ Whole = Annotated[int, Field(strict=True)]
 NAME = Field(min_length=1, max_length=80, pattern=r"^[^\x00-\x1f]*[^\x00-\x20][^\x00-\x1f]*$")
 """A name that people read: one line, and not blank."""
 
+KEY = Field(max_length=80)
+"""A name of a table."""
+
 
 class Part(BaseModel):
     """Base of every part of a definition: unknown fields are refused, nothing changes after reading."""
@@ -108,9 +111,12 @@ class Ask:
         words = f"{self.label}. {self.hint}".strip()
         if self.low is not None or self.high is not None:
             words += f" Allowed: {self.allowed}."
-            numbers = described["items"] = dict(described["items"]) if "items" in described else described
             bounds = {"minimum": self.low, "maximum": self.high}
-            numbers |= {name: bound for name, bound in bounds.items() if bound is not None}
+            given = {name: bound for name, bound in bounds.items() if bound is not None}
+            if "items" in described:
+                described["items"] = described["items"] | given
+            else:
+                described |= given
         described["description"] = words
         return described
 
