@@ -46,6 +46,7 @@ _SHORTEST_CUT_S = 1e-3
 _SAFETY = 0.9
 _GROWTH_LIMIT = 6.0
 _SHRINK_LIMIT = 0.2
+_SECOND_SHRINK = 0.35
 
 
 @compiled
@@ -78,6 +79,7 @@ def march_one(
     trace = np.zeros((1 + 200 * TRACED_POINTS, watches.shape[0] + 1))
     time, moved_j, step = 0.0, 0.0, min(_FIRST_STEP_S, longest_step_s)
     next_stop, points, steps, refused, status = 0, 1, 0, 0, FINISHED
+    last_error, last_h = 0.01, 0.0
 
     while time < horizon_s:
         while next_stop < stops_s.shape[0] and stops_s[next_stop] <= time:
@@ -90,7 +92,7 @@ def march_one(
                 path_start_w[p] = path_w[0, p]
             watched_values(bodies, segments, watches, locked, rows, ENERGY, trace, 0)
         h = min(step, longest_step_s)
-        planned, error, is_cut = h, 0.0, False
+        planned, error, is_cut, was_refused = h, 0.0, False, False
         while True:
             if time + h > end - 1e-6 * h:
                 h = end - time
@@ -112,7 +114,10 @@ def march_one(
             if not error <= 1.0:
                 refused += 1
                 is_cut = False
-                h *= max(_SHRINK_LIMIT, _SAFETY * error**-0.25) if math.isfinite(error) else _SHRINK_LIMIT
+                shrink = max(_SHRINK_LIMIT, _SAFETY * error**-0.25) if math.isfinite(error) else _SHRINK_LIMIT
+                # an error that does not follow the step's length is a fast change that the step must resolve
+                h *= shrink if not was_refused else min(shrink, _SECOND_SHRINK)
+                was_refused = True
                 planned = h
                 if h < _SHORTEST_STEP_S:
                     status = STEP_TOO_SMALL if math.isfinite(error) else NOT_FINITE
@@ -137,9 +142,12 @@ def march_one(
         _add_path_heat(boundaries, rows, path_w, path_j, h)
         moved_j += _accept(bodies, segments, locked, rows)
         steps += 1
-        growth = min(_GROWTH_LIMIT, max(_SHRINK_LIMIT, _SAFETY * max(error, 1e-8) ** -0.25))
         if not is_cut:
-            step = max(h * growth, planned) if h < planned else h * growth
+            change = _step_change(error, last_error, last_h / h)
+            step = max(h * change, planned) if h < planned else h * change
+            if was_refused:
+                step = min(step, h)
+            last_error, last_h = max(error, 0.01), h
         time = end if h == end - time else time + h
     return (
         status,
@@ -152,6 +160,19 @@ def march_one(
         moved_j,
         path_start_w,
     )
+
+
+@compiled
+def _step_change(error: float, last_error: float, last_share: float) -> float:
+    """Factor from one step to the next: by its error, and by how the error has changed since the last step.
+
+    ``last_share`` is the last step's length over this one's, 0 for the first. Source: predictive controller of
+    K. Gustafsson in E. Hairer, G. Wanner, Solving Ordinary Differential Equations II, section IV.8.
+    """
+    error = max(error, 1e-8)
+    by_error = error**0.25 / _SAFETY
+    by_trend = last_share * (error * error / last_error) ** 0.25 / _SAFETY
+    return 1.0 / min(max(by_error, by_trend, 1.0 / _GROWTH_LIMIT), 1.0 / _SHRINK_LIMIT)
 
 
 @compiled

@@ -131,7 +131,8 @@ def layered_face(
     closed = 1.0 - opening_m2 / size.inside_m2
     area_m2 = conduction_area_m2(size, thickness_m, with_edges) * closed
     inside_w_per_k = size.inside_m2 * closed / inside_film_m2_k_per_w
-    outside_m2 = outside_area_m2(size, thickness_m) if with_edges else size.inside_m2
+    flat_as_inside = not with_edges and not size.is_round_wall
+    outside_m2 = size.inside_m2 if flat_as_inside else outside_area_m2(size, thickness_m)
     outside_w_per_k = outside_m2 * closed / max(beyond.film_m2_k_per_w, 1e-9)
     cells = [cell for layer in layers for cell in _cells(layer)]
     halves = [cell.resistance_m2_k_per_w / 2.0 / area_m2 for cell in cells]
