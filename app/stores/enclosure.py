@@ -14,8 +14,8 @@ from app.engine.network import Body, Boundary, FixedLink
 from app.physics.conduction import corner_area_m2, edge_area_m2, log_mean_area_m2, penetration_depth_m
 from app.physics.melting import constant_curve
 from app.reference import material
-from app.stores.definition import Face, Layer
 from app.stores.geometry import FaceSize
+from app.stores.shell import Face, Layer
 from app.units import hours_from_seconds, seconds_from_hours
 
 _CELL_OF_DAY = 0.15

@@ -10,6 +10,7 @@ from dataclasses import dataclass
 from typing import Annotated, Any, Literal
 
 from pydantic import (
+    AfterValidator,
     BaseModel,
     ConfigDict,
     Field,
@@ -26,7 +27,13 @@ from app.units import celsius_from_fahrenheit
 Known = Literal["measured", "data_sheet", "estimated", "typical"]
 """How a number is known; ``typical`` is the value of a kind of store, not of this one."""
 
-Number = Annotated[float, Field(strict=True, allow_inf_nan=False)]
+
+def _without_negative_zero(number: float) -> float:
+    """The same number; minus zero, which equals zero and is written otherwise, as zero."""
+    return number + 0.0
+
+
+Number = Annotated[float, Field(strict=True, allow_inf_nan=False), AfterValidator(_without_negative_zero)]
 Whole = Annotated[int, Field(strict=True)]
 
 

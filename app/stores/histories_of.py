@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from app.engine.histories import Constant, Day, Drift, History, Ramp, Series
-from app.stores.definition import TemperatureHistory
+from app.stores.rooms import TemperatureHistory
 from app.units import seconds_from_hours
 
 

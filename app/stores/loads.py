@@ -23,8 +23,9 @@ from app.physics.melting import (
     water_curve,
 )
 from app.reference import coolant_material, food, material
-from app.stores.definition import Contents, Coolant, CurveSubstance, Fitting, Packaging, PlainSubstance
+from app.stores.definition import Contents, Coolant, CurveSubstance, Packaging, PlainSubstance
 from app.stores.geometry import Block, Shell, box_block, cylinder_block, near_cubic_stack, slab_block
+from app.stores.shell import Fitting
 
 CONTENTS_TOLERANCE_K = 0.005
 """Temperature error allowed in contents in one step: the hold time hangs on it."""

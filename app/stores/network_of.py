@@ -28,24 +28,13 @@ from app.physics.air import AIR_SPECIFIC_HEAT_J_PER_KG_K, air_density_kg_per_m3
 from app.physics.melting import constant_curve
 from app.physics.walls import surface_resistance_m2_k_per_w
 from app.reference import opening_kind
-from app.stores.definition import (
-    BoxInside,
-    Contents,
-    Coolant,
-    Face,
-    Faces,
-    Fitting,
-    FixedTemperature,
-    KValue,
-    Limit,
-    Opening,
-    StoreDefinition,
-)
+from app.stores.definition import Contents, Coolant, Limit, StoreDefinition
 from app.stores.enclosure import WALL_TOLERANCE_K, Surroundings, layered_face
 from app.stores.geometry import FaceSize, box_faces, cylinder_faces
 from app.stores.histories_of import history_of
 from app.stores.loads import Load, contents_load, coolant_load, fitting_load
 from app.stores.overall import USUAL_WALL_THICKNESS_M, overall_heat_leak_w_per_k
+from app.stores.shell import BoxInside, Face, Faces, Fitting, FixedTemperature, KValue, Opening
 from app.units import seconds_from_hours
 
 AIR_TOLERANCE_K = 0.1

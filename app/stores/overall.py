@@ -7,9 +7,9 @@ from __future__ import annotations
 
 import math
 
-from app.stores.definition import Enclosure, EnergyUse, HeatLeak, KValue
 from app.stores.enclosure import outside_area_m2
 from app.stores.geometry import FaceSize
+from app.stores.shell import Enclosure, EnergyUse, HeatLeak, KValue
 from app.units import joules_from_kwh, seconds_from_hours
 
 USUAL_WALL_THICKNESS_M = 0.06

@@ -15,10 +15,11 @@ from scipy.optimize import brentq
 from app.engine import Network, march
 from app.engine.network import MEAN, Watch, with_mean_watches
 from app.errors import DefinitionRefused, FieldFault
-from app.stores.definition import RiseTime, StoreDefinition
+from app.stores.definition import StoreDefinition
 from app.stores.loads import contents_block
 from app.stores.network_of import PlacedItem, StoreNetwork, network_of
 from app.stores.reading import definition_document, read_definition
+from app.stores.shell import RiseTime
 from app.units import seconds_from_hours
 
 PACKAGE_KG = 0.5

@@ -10,18 +10,10 @@ from collections.abc import Callable, Iterator
 
 from app.errors import FieldFault
 from app.reference import coolant_material, food, limit_preset, material, materials
-from app.stores.definition import (
-    Contents,
-    CurveSubstance,
-    DriftHistory,
-    EnergyUse,
-    Face,
-    Layer,
-    RiseTime,
-    SeriesHistory,
-    StoreDefinition,
-)
+from app.stores.definition import Contents, CurveSubstance, StoreDefinition
 from app.stores.later import Faults, known_key, later, limits_of, not_yet
+from app.stores.rooms import DriftHistory, SeriesHistory
+from app.stores.shell import EnergyUse, Face, Layer, RiseTime
 from app.stores.volumes import sizes
 
 _LEAST_J_PER_KG_K = 100.0

@@ -10,9 +10,10 @@ from typing import Any
 
 from app.errors import FieldFault, UnknownKey
 from app.reference import coolant_material
-from app.stores.definition import BoxInside, Contents, Coolant, RiseTime, StoreDefinition
+from app.stores.definition import Contents, Coolant, StoreDefinition
 from app.stores.geometry import FaceSize, box_faces, cylinder_faces
 from app.stores.later import Faults
+from app.stores.shell import BoxInside, RiseTime
 
 _PLAUSIBLE_KG_PER_M3 = (20.0, 8000.0)
 """From light dry goods in cartons to metal parts, in the volume in which they stand."""

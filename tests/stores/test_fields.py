@@ -56,7 +56,10 @@ def test_the_fingerprint_is_that_of_the_question_and_not_of_its_spelling() -> No
     spelt["outage"] = {"horizon_h": 96.0}
     spelt["contents"][0]["mass_kg"] = {"value": 18}
     turned = dict(reversed(list(spelt.items())))
-    prints = {fingerprint(read_definition(one), {"confidence": 0.9}, "1") for one in (plain, spelt, turned)}
+    minus = simple()
+    minus["contents"][0]["limits"][0]["longer_than_h"] = -0.0
+    stores = (plain, spelt, turned, minus)
+    prints = {fingerprint(read_definition(one), {"confidence": 0.9}, "1") for one in stores}
     assert len(prints) == 1
     assert re.fullmatch("[0-9a-f]{64}", prints.pop())
 

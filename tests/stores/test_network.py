@@ -14,10 +14,10 @@ from app.answers import hold_time
 from app.engine import march
 from app.errors import DefinitionRefused
 from app.stores import enclosure, loads, read_definition, sample_case, sample_cases, store_network
-from app.stores.definition import RiseTime
 from app.stores.geometry import near_cubic_stack
 from app.stores.overall import USUAL_WALL_THICKNESS_M
 from app.stores.rise_time import PACKAGE_M, heat_leak_of_rise_time_w_per_k
+from app.stores.shell import RiseTime
 
 Document = dict[str, Any]
 
