@@ -144,6 +144,16 @@ def _doorless(case: _Case) -> Iterator[Caution]:
         )
 
 
+def _tight_walls(case: _Case) -> Iterator[Caution]:
+    overall = case.definition.enclosure.overall
+    if overall is not None and case.store.path_w_per_k.get("walls", 0.0) == 0.0:
+        yield Caution(
+            "walls_count_as_tight",
+            "The doors and bridges that are given leak more than the figure for the whole store allows, so its walls "
+            "count as tight. The figure includes doors: check it, or leave the doors out.",
+        )
+
+
 def _unused(case: _Case) -> Iterator[Caution]:
     names = case.definition.given_but_unused()
     if names:
@@ -164,6 +174,7 @@ _RULES: tuple[Callable[[_Case], Iterator[Caution]], ...] = (
     _food,
     _room_colder,
     _thick_contents,
+    _tight_walls,
     _unused,
     _presets,
 )

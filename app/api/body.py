@@ -21,6 +21,8 @@ async def json_body(request: Request) -> Any:
     except json.JSONDecodeError as fault:
         where = f"line {fault.lineno}, column {fault.colno}"
         raise HTTPException(400, f"The body is not JSON: {fault.msg} at {where}.") from fault
+    except ValueError as fault:
+        raise HTTPException(400, "The body holds a number that is too long to be read.") from fault
     except RecursionError as fault:
         raise HTTPException(400, "The body is nested too deeply.") from fault
     _check_depth(document, 0)

@@ -192,3 +192,14 @@ def test_wall_of_60_mm_holds_the_food_bank_freezer_for_less():
         thin["enclosure"]["faces"][name]["layers"][1]["thickness_m"] = 0.06
     before, after = (hold_time(read_definition(s)).hold_time_h.best_estimate for s in (thick, thin))
     assert after < before
+
+
+def test_doors_that_leak_more_than_the_whole_store_are_pointed_out():
+    enclosure = {
+        "inside_m": {"width": 1.0, "depth": 1.0, "height": 1.0},
+        "overall": {"k_w_per_m2_k": 0.03},
+        "openings": [{"name": "door", "width_m": 0.6, "height_m": 0.9, "u_w_per_m2_k": 2.0, "seal_leak_m3_per_h": 2.0}],
+    }
+    codes = [caution.code for caution in answer_to({"enclosure": enclosure}).cautions]
+    assert "walls_count_as_tight" in codes
+    assert "walls_count_as_tight" not in [caution.code for caution in answer_to().cautions]

@@ -106,7 +106,7 @@ def test_faults_are_listed_all_at_once_by_field(api):
     ("text", "says"),
     [
         ("{", "line 1"), ('{"store": NaN}', "NaN"), ('{"store": Infinity}', "Infinity"),
-        ('{"store": 1, "store": 2}', "twice"), ("[" * 100 + "]" * 100, "deep"), ("", "JSON"),
+        ('{"store": 1, "store": 2}', "twice"), ("[" * 100 + "]" * 100, "deep"), ("", "JSON"), ("9" * 5000, "too long"),
     ],
 )  # fmt: skip
 def test_what_is_no_json_is_said_with_its_place(api, text, says):
