@@ -26,11 +26,18 @@ class Result:
     evaluations: int
 
 
+class GaveUp(Exception):
+    """A method that needs too many evaluations to be worth comparing."""
+
+
 class Baseline:
     """Right-hand side of a network for solve_ivp."""
 
+    most_evaluations = 20_000
+
     def __init__(self, network: Network) -> None:
         self.network = network
+        self.evaluations = 0
         bodies = network.bodies
         self.n = len(bodies)
         self.parent = bodies["parent"]
@@ -72,6 +79,9 @@ class Baseline:
 
     def __call__(self, time_s: float, energy_j: np.ndarray) -> np.ndarray:
         """Net heat flow into every body. [W]"""
+        self.evaluations += 1
+        if self.evaluations > self.most_evaluations:
+            raise GaveUp
         network = self.network
         at_c, resistivity = self.states(energy_j)
         b = network.bodies[self.children]
@@ -105,6 +115,7 @@ class Baseline:
         def passed(_: float, energy_j: np.ndarray) -> float:
             return float(self.states(energy_j)[0][body] - level_c)
 
+        self.evaluations = 0
         start = self.network.bodies["start_j"].astype(float)
         scale = np.abs(self.network.bodies["mass_kg"]) * 2000.0
         done = solve_ivp(
