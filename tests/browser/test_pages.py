@@ -2,8 +2,11 @@
 
 from __future__ import annotations
 
+import re
+
 import pytest
 from axe_playwright_python.sync_playwright import Axe
+from playwright.sync_api import expect
 
 PAGES = [
     "/",
@@ -72,4 +75,4 @@ def test_keyboard_reaches_the_content_first(opened, path):
     page.keyboard.press("Tab")
     assert "Skip" in page.evaluate("document.activeElement.innerText")
     page.keyboard.press("Enter")
-    assert page.url.endswith("#main")
+    expect(page).to_have_url(re.compile("#main$"))
